@@ -1,0 +1,1 @@
+"""lowindex: does a finitely presented group have a nilpotent subgroup of finite index?"""
