@@ -1,22 +1,28 @@
 """Rewriting with a log: derivations, Tietze moves, Knuth-Bendix completion."""
 
 from lowindex.rewriting.completion import Completion
-from lowindex.rewriting.derivation import Derivation, Lemma, Proof
+from lowindex.rewriting.derivation import Derivation, Factor, Lemma, Proof
 from lowindex.rewriting.order import Order, RecursivePath, Shortlex, WeightedShortlex
 from lowindex.rewriting.relators import RelatorSet
-from lowindex.rewriting.simplify import simplify
+from lowindex.rewriting.rules import Rule, RuleSet
+from lowindex.rewriting.simplify import eliminate_short, propagate, simplify
 from lowindex.rewriting.strings import encoded
 
 __all__ = [
     "Completion",
     "Derivation",
+    "Factor",
     "Lemma",
     "Order",
     "Proof",
     "RecursivePath",
     "RelatorSet",
+    "Rule",
+    "RuleSet",
     "Shortlex",
     "WeightedShortlex",
+    "eliminate_short",
     "encoded",
+    "propagate",
     "simplify",
 ]

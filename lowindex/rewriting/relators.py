@@ -8,14 +8,15 @@ rewritten. Rules come from all rotations of all relators (see rules.py).
 from __future__ import annotations
 
 import heapq
-from collections.abc import Collection, Iterable
+from collections.abc import Collection, Iterable, Mapping
 
 from lowindex.budget import Budget
+from lowindex.rewriting.blocks import Blocks
 from lowindex.rewriting.derivation import Derivation, Factor
 from lowindex.rewriting.order import Order
 from lowindex.rewriting.rules import Rule, RuleSet
 from lowindex.rewriting.strings import cyclic_ends, decoded, generator_of, inverted, joined, letter_of
-from lowindex.words import Word
+from lowindex.words import Word, inverse, reduced
 
 ROUNDS = 60
 """How often one relator is rotated and rewritten before it is taken as it is."""
@@ -32,6 +33,7 @@ class RelatorSet:
         self.alive = set(generators)
         self.rules = RuleSet(order, derivation.words)
         self.rules.admit(self.alive)
+        self.blocks = Blocks(derivation)
         self.active: dict[int, str] = {}
         self.single: dict[str, Rule] = {}
         self.occurrences: dict[int, set[int]] = {g: set() for g in self.alive}
@@ -79,6 +81,7 @@ class RelatorSet:
         factors: list[Factor] = []
         before = self.rules.scanned
         word = self.substituted(self.derivation.words[equation], "", factors)
+        word = self.blocks.sorted_logged(word, "", factors)
         word = self.rules.reduce_logged(word, "", factors)
         prefix = ""
         for _ in range(ROUNDS):
@@ -105,6 +108,7 @@ class RelatorSet:
         rules = self.rules.add(word, number)
         self._make_room(number, rules)
         self.active[number] = word
+        self.blocks.learn(word, number)
         for generator in {generator_of(c) for c in word}:
             self.occurrences[generator].add(number)
         return rules
@@ -143,7 +147,9 @@ class RelatorSet:
 
     def retire(self, equation: int) -> None:
         """Take a relator out of force."""
-        for generator in {generator_of(c) for c in self.active.pop(equation)}:
+        word = self.active.pop(equation)
+        self.blocks.forget(word, equation)
+        for generator in {generator_of(c) for c in word}:
             self.occurrences[generator].discard(equation)
         for rule in self.rules.remove(equation):
             self.forget(rule)
@@ -163,6 +169,23 @@ class RelatorSet:
             for letter, rule in reversed(self.single.items())
             if not ord(letter) & 1
         ]
+
+    def renumbered_words(self) -> list[Word]:
+        """The relators in force, in the living generators numbered 1, 2, ... in increasing order."""
+        place = self._places()
+        return [tuple([place[x] for x in decoded(word)]) for word in self.active.values()]
+
+    def renumbered_images(self, rank: int) -> list[Word]:
+        """Each of the generators 1..rank as a word in the living ones, these numbered as in `renumbered_words`."""
+        place = self._places()
+        images = [(g,) for g in range(1, rank + 1)]
+        for generator, word in self.solutions():
+            images[generator - 1] = reduced(y for x in word for y in (images[x - 1] if x > 0 else inverse(images[-x - 1])))
+        return [tuple([place[x] for x in word]) for word in images]
+
+    def _places(self) -> dict[int, int]:
+        place = {g: k for k, g in enumerate(sorted(self.alive), 1)}
+        return place | {-g: -k for g, k in place.items()}
 
     # -- elimination
 
@@ -198,24 +221,32 @@ class RelatorSet:
                     continue
                 self.rules.log(rule, joined(prefix, done), factors)
                 done = joined(done, rule.rhs)
-            word = done
+            word = self.blocks.sorted_logged(done, prefix, factors)
             self.budget.spend(1 + len(word))
 
-    def cheapest(self, keep: Collection[int], *, growth: int, longest: int) -> tuple[int, int] | None:
+    def cheapest(
+        self, keep: Collection[int], *, growth: int, longest: int, weight: Mapping[int, int] | None = None
+    ) -> tuple[int, int] | None:
         """(generator, equation) of the elimination to do next: in the shortest relator that solves a generator outside
         `keep`, the one that lengthens the others least; None when all cost more than `growth` letters or stand in
-        relators of more than `longest` letters."""
-        for number, word in sorted(self.active.items(), key=lambda item: (len(item[1]), item[0])):
+        relators of more than `longest` letters. With weights only the heaviest generator of a relator is eliminated, and
+        relators with fewer other generators outside `keep` come first."""
+        best: tuple[tuple[int, int, int, int], int] | None = None
+        for number, word in self.active.items():
             if len(word) > longest:
-                return None
-            choices = [
-                (self._growth(g, number, len(word)), g)
-                for g in {generator_of(c) for c in word}
-                if g not in keep and occurs_once(word, g)
-            ]
-            if choices and min(choices)[0] <= growth:
-                return min(choices)[1], number
-        return None
+                continue
+            generators = {generator_of(c) for c in word}
+            outside = generators.difference(keep)
+            size = (len(outside) if weight else 0, len(word))
+            if best and size > best[0][:2]:
+                continue
+            heaviest = max(weight[g] for g in generators) if weight else 0
+            for g in outside:
+                if (not weight or weight[g] == heaviest) and occurs_once(word, g):
+                    cost = self._growth(g, number, len(word))
+                    if cost <= growth and (best is None or (*size, cost, g) < best[0]):
+                        best = (*size, cost, g), number
+        return (best[0][3], best[1]) if best else None
 
     def _growth(self, generator: int, equation: int, length: int) -> int:
         plus, minus = letter_of(generator), letter_of(-generator)

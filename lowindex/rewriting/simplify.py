@@ -8,7 +8,7 @@ larger limits, makes words explode.
 from __future__ import annotations
 
 import heapq
-from collections.abc import Collection
+from collections.abc import Collection, Mapping
 
 from lowindex.rewriting.relators import RelatorSet, occurs_once
 from lowindex.rewriting.strings import generator_of
@@ -58,12 +58,79 @@ def eliminate_short(relators: RelatorSet, keep: Collection[int] = (), *, most: i
         relators.insert(number)
 
 
-def simplify(relators: RelatorSet, keep: Collection[int] = (), *, growth: int = GROWTH, longest: int = LONGEST) -> None:
+def propagate(relators: RelatorSet, basis: Collection[int], weight: Mapping[int, int]) -> None:
+    """Solve the other generators in terms of `basis`, one relator with a single unsolved letter at a time.
+
+    Words are sorted by the commutators of basis elements that are already relators, and by nothing else, so they stay as short
+    as exponent vectors. When every relator has several unsolved letters, the lightest of the closest one join the basis.
+    What is left of the relators goes back on the queue.
+    """
+    basis = set(basis)
+    heap: list[tuple[int, int, int]] = []
+    current: set[int] = set()
+    users: dict[int, set[int]] = {}
+
+    def unsolved(word: str) -> int:
+        return sum(1 for c in word if generator_of(c) not in basis)
+
+    def put(equation: int) -> None:
+        number = relators.reduced_equation(equation)
+        word = relators.derivation.words[number]
+        if not word or number in current or number in relators.active:
+            return
+        unknown = unsolved(word)
+        if not unknown and len(word) <= 4:
+            relators.take(number)
+            return
+        current.add(number)
+        heapq.heappush(heap, (unknown, len(word), number))
+        for generator in {generator_of(c) for c in word}:
+            users.setdefault(generator, set()).add(number)
+
+    def again(generator: int) -> None:
+        for other in sorted(users.pop(generator, set()) & current):
+            current.discard(other)
+            put(other)
+
+    while relators.queue:
+        put(heapq.heappop(relators.queue)[1])
+    for number in sorted(relators.active):
+        if unsolved(relators.active[number]) or len(relators.active[number]) > 4:
+            relators.retire(number)
+            put(number)
+    while heap and not relators.budget.exhausted:
+        unknown, _, number = heapq.heappop(heap)
+        if number not in current or not unknown:
+            continue
+        word = relators.derivation.words[number]
+        others = sorted({generator_of(c) for c in word}.difference(basis), key=lambda g: (weight[g], g))
+        if not others or unsolved(word) != unknown:
+            continue
+        if unknown == 1:
+            current.discard(number)
+            relators.eliminate(others[0], number)
+            again(others[0])
+        else:
+            basis.add(others[0])
+            again(others[0])
+            if number in current:
+                heapq.heappush(heap, (unsolved(word), len(word), number))
+    for number in sorted(current):
+        relators.insert(number)
+
+
+def simplify(
+    relators: RelatorSet,
+    keep: Collection[int] = (),
+    *,
+    growth: int = GROWTH,
+    longest: int = LONGEST,
+    weight: Mapping[int, int] | None = None,
+) -> None:
     """Eliminate generators outside `keep` and shorten relators until neither helps."""
-    eliminate_short(relators, keep)
     relators.settle()
     while not relators.budget.exhausted:
-        choice = relators.cheapest(keep, growth=growth, longest=longest)
+        choice = relators.cheapest(keep, growth=growth, longest=longest, weight=weight)
         if choice is None:
             return
         relators.eliminate(*choice)
