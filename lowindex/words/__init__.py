@@ -1,5 +1,6 @@
 """Words, presentations and their textbook notation."""
 
+from lowindex.words.presentation import Presentation, parse_file
 from lowindex.words.word import (
     Word,
     commutator,
@@ -14,12 +15,14 @@ from lowindex.words.word import (
 )
 
 __all__ = [
+    "Presentation",
     "Word",
     "commutator",
     "conjugate",
     "cyclic_form",
     "cyclically_reduced",
     "inverse",
+    "parse_file",
     "power",
     "primitive_root",
     "product",

@@ -1,0 +1,24 @@
+"""Coset tables, Schreier trees, presentations of subgroups of finite index, coset enumeration."""
+
+from lowindex.cosets.enumeration import Enumeration, enumerate_cosets
+from lowindex.cosets.graph import schreier_graph
+from lowindex.cosets.operations import compose, core, intersection, pull_back, standard_form
+from lowindex.cosets.reidemeister_schreier import SubgroupPresentation, subgroup_presentation
+from lowindex.cosets.schreier import SchreierTree
+from lowindex.cosets.table import CosetTable, column
+
+__all__ = [
+    "CosetTable",
+    "Enumeration",
+    "SchreierTree",
+    "SubgroupPresentation",
+    "column",
+    "compose",
+    "core",
+    "enumerate_cosets",
+    "intersection",
+    "pull_back",
+    "schreier_graph",
+    "standard_form",
+    "subgroup_presentation",
+]
