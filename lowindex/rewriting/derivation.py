@@ -87,6 +87,10 @@ class Derivation:
             out += (conjugator, word if sign > 0 else inverted(word), inverted(conjugator))
         return free_reduced("".join(out)) == self.words[number]
 
+    def used(self, goals: Sequence[int]) -> set[int]:
+        """The numbers of all equations that the proofs of the goals use."""
+        return set(self._users(goals))
+
     def cut(self, goals: Sequence[int]) -> Proof:
         """What the goals use (numbers of equations; -1: nothing to prove), renumbered. One pass upwards decides what is
         put where it is used, so nothing is expanded twice."""

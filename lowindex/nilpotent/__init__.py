@@ -1,0 +1,18 @@
+"""Nilpotent groups: collection, nilpotent quotients, proofs of nilpotence."""
+
+from lowindex.nilpotent.chain import ChainProof, prove_nilpotent, quotient_of, simplified_relators
+from lowindex.nilpotent.collection import NilpotentPresentation, Vector
+from lowindex.nilpotent.consistency import is_consistent
+from lowindex.nilpotent.quotient import NilpotentQuotient, nilpotent_quotient
+
+__all__ = [
+    "ChainProof",
+    "NilpotentPresentation",
+    "NilpotentQuotient",
+    "Vector",
+    "is_consistent",
+    "nilpotent_quotient",
+    "prove_nilpotent",
+    "quotient_of",
+    "simplified_relators",
+]
