@@ -1,6 +1,6 @@
 """Nilpotent groups: collection, nilpotent quotients, proofs of nilpotence."""
 
-from lowindex.nilpotent.chain import ChainProof, prove_nilpotent, quotient_of, simplified_relators
+from lowindex.nilpotent.chain import ChainProof, conjugate_pairs, prove_nilpotent, quotient_of, simplified_relators
 from lowindex.nilpotent.collection import NilpotentPresentation, Vector
 from lowindex.nilpotent.consistency import is_consistent
 from lowindex.nilpotent.quotient import NilpotentQuotient, nilpotent_quotient
@@ -10,6 +10,7 @@ __all__ = [
     "NilpotentPresentation",
     "NilpotentQuotient",
     "Vector",
+    "conjugate_pairs",
     "is_consistent",
     "nilpotent_quotient",
     "prove_nilpotent",

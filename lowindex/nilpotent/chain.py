@@ -158,7 +158,7 @@ class _Attempt:
         """Prepare the relators; None when the nilpotent quotient does not become stable."""
         reduced = prepare(rank, relators, max_class, budget)
         living = sorted(reduced.alive)
-        quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living)
+        quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living[::-1])
         return cls(rank, reduced, living, quotient) if quotient.stable else None
 
     def __init__(self, rank: int, reduced: RelatorSet, living: Sequence[int], quotient: NilpotentQuotient) -> None:

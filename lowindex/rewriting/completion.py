@@ -41,7 +41,7 @@ class Completion(RelatorSet):
         self._pairs: list[tuple[int, int, Rule, Rule, int]] = []
         self._waiting: list[tuple[int, int]] = []
         self._aligned: set[tuple[int, int, int, int]] = set()
-        self._count = 0
+        self._count = self._tried = 0
         self._news = True
 
     def set_goals(self, goals: Mapping[Goal, Word], solves: Mapping[Goal, int]) -> None:
@@ -209,9 +209,10 @@ class Completion(RelatorSet):
             for n in range(1, len(lhs)):
                 self._starts.setdefault(lhs[:n], {})[lhs] = None
                 self._stops.setdefault(lhs[-n:], {})[lhs] = None
+        before = self._tried
         for rule in rules:
             self._overlaps(rule)
-        self.budget.spend(len(rules))
+        self.budget.spend(len(rules) + (self._tried - before) // 2)
 
     def forget(self, rule: Rule) -> None:
         """Take a rule out of the index of overlaps."""
@@ -232,6 +233,7 @@ class Completion(RelatorSet):
     def _push(self, first: Rule, second: Rule, overlap: int) -> None:
         """Put a pair on the heap, once for each way of laying the two cyclic words along each other."""
         size = len(first.lhs) + len(first.rhs) + len(second.lhs) + len(second.rhs) - 2 * overlap
+        self._tried += 1
         if size > LONGEST_PAIR:
             return
         place = self._alignment(first, second, overlap)

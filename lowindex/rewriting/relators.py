@@ -106,6 +106,7 @@ class RelatorSet:
         if number in self.active:
             return []
         rules = self.rules.add(word, number)
+        self.budget.spend(len(word) * (4 + len(word) // 4) // 4)
         self._make_room(number, rules)
         self.active[number] = word
         self.blocks.learn(word, number)
@@ -120,6 +121,7 @@ class RelatorSet:
         shortest = min(len(rule.lhs) for rule in rules)
         generators = {generator_of(c) for c in self.derivation.words[number]}
         touched = set.union(*(self.occurrences[g] for g in generators))
+        self.budget.spend(1 + len(touched) * len(rules) // 20)
         for other in sorted(touched):
             word = self.active[other]
             if len(word) < shortest:
