@@ -207,9 +207,9 @@ class _Attempt:
         chain = list(self.symbols)
         others = [g for g in self.living if g not in set(chain)]
         weight = dict(zip(chain, self.group.weights, strict=True)) | dict.fromkeys(others, 1)
-        yield Shortlex(chain + others), 12
-        if self.quotient.nilpotency_class > 1 or others:
+        if self.quotient.nilpotency_class > 1:
             yield RecursivePath(chain[::-1] + others), 60
+        yield Shortlex(chain + others), 12
         if self.quotient.nilpotency_class > 2:
             yield WeightedShortlex(chain + others, weight), 12
 

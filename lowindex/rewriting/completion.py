@@ -176,7 +176,9 @@ class Completion(RelatorSet):
         if not word:
             return
         number = self.derivation.derive(word, steps)
-        if not self.take(number) and self.rules.reduce(left_form) != self.rules.reduce(right_form):
+        if self.take(number) or not self.single.keys().isdisjoint(word):
+            return
+        if self.rules.reduce(left_form) != self.rules.reduce(right_form):
             # Conjugate to a word that rewrites to 1, but the two sides do not meet: keep the relator as it is.
             ends = cyclic_ends(word)
             number = self._conjugated(number, word[ends : len(word) - ends], word[:ends], [])
