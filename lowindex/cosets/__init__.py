@@ -2,7 +2,15 @@
 
 from lowindex.cosets.enumeration import Enumeration, enumerate_cosets
 from lowindex.cosets.graph import schreier_graph
-from lowindex.cosets.operations import compose, core, intersection, pull_back, standard_form
+from lowindex.cosets.operations import (
+    abelian_table,
+    compose,
+    core,
+    intersection,
+    pull_back,
+    standard_form,
+    vector_table,
+)
 from lowindex.cosets.reidemeister_schreier import SubgroupPresentation, subgroup_presentation
 from lowindex.cosets.schreier import SchreierTree
 from lowindex.cosets.table import CosetTable, column
@@ -12,6 +20,7 @@ __all__ = [
     "Enumeration",
     "SchreierTree",
     "SubgroupPresentation",
+    "abelian_table",
     "column",
     "compose",
     "core",
@@ -21,4 +30,5 @@ __all__ = [
     "schreier_graph",
     "standard_form",
     "subgroup_presentation",
+    "vector_table",
 ]

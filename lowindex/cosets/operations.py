@@ -73,6 +73,40 @@ def pull_back(table: CosetTable, images: Sequence[Word]) -> CosetTable:
     return found
 
 
+def abelian_table(images: Sequence[Sequence[int]], moduli: Sequence[int], max_index: int | None = None) -> CosetTable | None:
+    """The regular action of the subgroup of C_m1 × C_m2 × ... that the images of the generators (vectors) generate; None when it has
+    more than `max_index` elements."""
+    signed = [[s * x for x in image] for image in images for s in (1, -1)]
+
+    def step(point: tuple[int, ...], place: int) -> tuple[int, ...]:
+        return tuple([(x + y) % m for x, y, m in zip(point, signed[place], moduli, strict=True)])
+
+    return _orbit((0,) * len(moduli), len(signed), step, max_index)
+
+
+def vector_table(
+    vectors: Sequence[Sequence[int]], matrices: Sequence[Sequence[Sequence[int]]], q: int, max_index: int
+) -> CosetTable | None:
+    """The orbit of a list of row vectors over F_q under invertible matrices, one for every generator; None when it is longer than
+    `max_index`."""
+    forward = [np.array(matrix, dtype=np.int64) for matrix in matrices]
+    start = np.array(vectors, dtype=np.int64) % q
+    number = {start.tobytes(): 0}
+    points = [start]
+    columns: list[list[int]] = [[] for _ in forward]
+    for point in points:
+        for images, matrix in zip(columns, forward, strict=True):
+            image = point @ matrix % q
+            key = image.tobytes()
+            if key not in number:
+                if len(points) >= max_index:
+                    return None
+                number[key] = len(points)
+                points.append(image)
+            images.append(number[key])
+    return standard_form(CosetTable.from_permutations(columns)) if columns else None
+
+
 def _orbit(
     start: Point, columns: int, step: Callable[[Point, int], Point], max_index: int | None = None
 ) -> CosetTable | None:

@@ -11,29 +11,22 @@ from functools import cached_property
 from lowindex.algebra import Abelianization, abelianization
 from lowindex.budget import Budget
 from lowindex.cosets import CosetTable, SubgroupPresentation, compose, pull_back, subgroup_presentation
-from lowindex.nilpotent import ChainProof, NilpotentQuotient, prove_nilpotent, quotient_of, simplified_relators
+from lowindex.nilpotent import ChainProof, NilpotentQuotient, nilpotent_quotient, prove_nilpotent, simplified_relators
 from lowindex.rewriting import RelatorSet
 from lowindex.words import Presentation, Word
 
 
 class Visit:
-    """The stabiliser H of point 0 of `table` in the group of `presentation`. `how` says in a line how it was reached;
-    `contains_fitting`: whether H is known to contain the Fitting subgroup of a virtually nilpotent group."""
+    """The stabiliser H of point 0 of `table` in the group of `presentation`. `how` says in a line how it was reached."""
 
     def __init__(
-        self,
-        presentation: Presentation,
-        table: CosetTable,
-        *,
-        budget: Budget,
-        how: str = "the group itself",
-        contains_fitting: bool = True,
+        self, presentation: Presentation, table: CosetTable, *, max_class: int, budget: Budget, how: str = "the group itself"
     ) -> None:
         self.presentation = presentation
         self.table = table
+        self.max_class = max_class
         self.budget = budget
         self.how = how
-        self.contains_fitting = contains_fitting
 
     @property
     def index(self) -> int:
@@ -46,37 +39,40 @@ class Visit:
         return subgroup_presentation(self.presentation, self.table)
 
     @cached_property
-    def reduced(self) -> RelatorSet:
-        """The presentation of H after Tietze moves."""
+    def _reduced(self) -> RelatorSet:
         return simplified_relators(self.subgroup.rank, self.subgroup.relators, budget=self.budget)
 
-    @cached_property
+    @property
     def rank(self) -> int:
         """Number of generators left after Tietze moves."""
-        return len(self.reduced.alive)
+        return len(self._reduced.alive)
 
     @cached_property
     def relators(self) -> tuple[Word, ...]:
         """The relators left, in generators 1..rank."""
-        return tuple(self.reduced.renumbered_words())
+        return tuple(self._reduced.renumbered_words())
 
     @cached_property
     def images(self) -> Sequence[Word]:
         """Every Schreier generator as a word in the generators that are left."""
-        return self.reduced.renumbered_images(self.subgroup.rank)
+        return self._reduced.renumbered_images(self.subgroup.rank)
 
     @cached_property
     def homology(self) -> Abelianization:
         """H_1 of H."""
         return abelianization(self.rank, self.relators)
 
-    def below(self, table: CosetTable, *, how: str, contains_fitting: bool) -> Visit:
+    @cached_property
+    def quotient(self) -> NilpotentQuotient:
+        """The nilpotent quotient of H up to the class of the plan."""
+        return nilpotent_quotient(self.rank, self.relators, max_class=self.max_class, budget=self.budget)
+
+    def proof(self, budget: Budget) -> ChainProof | None:
+        """A proof that H is nilpotent, if the budget is enough to find one."""
+        return prove_nilpotent(self.subgroup.rank, self.subgroup.relators, max_class=self.max_class, budget=budget)
+
+    def below(self, table: CosetTable, *, how: str) -> Visit:
         """The subgroup K of H that is the stabiliser of 0 in a table over the generators left after Tietze moves."""
         over_schreier = pull_back(table, self.images)
-        return Visit(
-            self.presentation,
-            compose(over_schreier, self.subgroup),
-            budget=self.budget,
-            how=how,
-            contains_fitting=self.contains_fitting and contains_fitting,
-        )
+        whole = compose(over_schreier, self.subgroup)
+        return Visit(self.presentation, whole, max_class=self.max_class, budget=self.budget, how=how)

@@ -1,0 +1,155 @@
+"""The hunt: lanes in the order of the plan, and a verdict that announces only what the independent checker accepted."""
+
+from __future__ import annotations
+
+import time
+from collections.abc import Iterable
+from typing import Any
+
+import lowindex
+from lowindex.budget import Budget
+from lowindex.checker import check
+from lowindex.cosets import CosetTable
+from lowindex.events import Event, Listener, silent
+from lowindex.hunt.breadth import Breadth
+from lowindex.hunt.descent import descend
+from lowindex.hunt.finite import cyclic_visits, regular_table
+from lowindex.hunt.plan import Plan, Stage, plan_for
+from lowindex.hunt.verdict import UNDECIDED, YES, Verdict
+from lowindex.hunt.visit import Visit
+from lowindex.nilpotent import ChainProof
+from lowindex.witness import Witness, virtually_nilpotent
+from lowindex.words import Presentation, Word
+
+
+def hunt(presentation: Presentation, *, effort: int = 5, seconds: float | None = None, listen: Listener = silent) -> Verdict:
+    """Decide whether the group has a nilpotent subgroup of finite index, within an effort from 1 to 9.
+
+    `seconds` is a cap on top of the effort. Ctrl-C ends the hunt with the verdict "undecided" and what was searched. InputError for an
+    effort out of range.
+
+    >>> from lowindex.words import Presentation
+    >>> found = hunt(Presentation.parse("⟨a, b | a^2, b^2⟩"))
+    >>> found.verdict, found.index, found.growth_degree
+    ('virtually nilpotent', 2, 1)
+    """
+    return _Hunt(presentation, plan_for(effort), seconds, listen).verdict()
+
+
+class _Hunt:
+    def __init__(self, presentation: Presentation, plan: Plan, seconds: float | None, listen: Listener) -> None:
+        self.presentation = presentation
+        self.plan = plan
+        self.listen = listen
+        self.began = time.monotonic()
+        self.budget = Budget(plan.work, seconds=seconds)
+        self.searched: dict[str, Any] = {"subgroups": 0}
+        self.found: tuple[Visit, ChainProof, Witness] | None = None
+        self.open_at: int | None = None
+        whole = CosetTable.from_permutations([[0]] * presentation.rank)
+        self.whole = Visit(presentation, whole, max_class=plan.max_class, budget=self.budget)
+
+    def verdict(self) -> Verdict:
+        interrupted = False
+        try:
+            for stage in self.plan.stages:
+                if self.found is None and not self.budget.exhausted:
+                    self._run(stage)
+        except KeyboardInterrupt:
+            interrupted = True
+        return self._decided() if self.found else self._undecided(interrupted)
+
+    def _run(self, stage: Stage) -> None:
+        budget = self.budget.part(self.plan.work * stage.share // 100)
+        if stage.lane == "finite":
+            self._finite(stage.reach, budget)
+        elif stage.lane == "descent":
+            self._try(descend(self.whole, reach=stage.reach, budget=budget), "descent")
+        else:
+            lane = Breadth(self.whole, reach=stage.reach, budget=budget)
+            self._try(lane.visits(), "breadth")
+            self.searched |= {"complete_to_index": lane.complete_to, "classes": lane.classes, "nodes": lane.nodes}
+
+    def _finite(self, max_cosets: int, budget: Budget) -> None:
+        self.listen(Event("finite", f"coset enumeration, up to {max_cosets} cosets"))
+        self.searched["cosets"] = max_cosets
+        table = regular_table(self.presentation, max_cosets=max_cosets, budget=budget)
+        if table is None:
+            return
+        self.searched["order"] = table.index
+        self._try(descend(self.whole, reach=min(table.index, 400), budget=self.budget.part(self.budget.left // 3)), "descent")
+        if self.found is None:
+            self._try(cyclic_visits(self.whole, table, self.budget.part(self.budget.left // 2)), "finite")
+
+    def _try(self, visits: Iterable[tuple[Visit, Budget]], lane: str) -> None:
+        """Try to prove the subgroups of a lane nilpotent, one after the other, until one is."""
+        for visit, budget in visits:
+            self.searched["subgroups"] += 1
+            self.listen(Event(lane, f"index {visit.index}: {visit.how}", visit.index))
+            proof = visit.proof(budget)
+            if proof is None:
+                self.open_at = visit.index
+                continue
+            witness = virtually_nilpotent(
+                self.presentation, visit.subgroup, proof, effort=self.plan.effort, version=lowindex.__version__
+            )
+            check(witness.text, presentation=(list(self.presentation.names), list(self.presentation.relators)))
+            self.found = visit, proof, witness
+            return
+
+    def _decided(self) -> Verdict:
+        assert self.found is not None
+        visit, proof, witness = self.found
+        summary = witness.content["summary"]
+        return Verdict(
+            self.presentation,
+            YES,
+            _reason(summary, visit),
+            self.searched,
+            self.plan.effort,
+            time.monotonic() - self.began,
+            lowindex.__version__,
+            index=summary["index"],
+            nilpotency_class=summary["class"],
+            hirsch_length=summary["hirsch_length"],
+            growth_degree=summary["growth_degree"],
+            finite_order=summary["finite_order"],
+            factors=tuple((rank, tuple(torsion)) for rank, torsion in summary["factors"]),
+            generators=_generators(visit, proof),
+            witness=witness,
+        )
+
+    def _undecided(self, interrupted: bool) -> Verdict:
+        if interrupted:
+            reason = "interrupted"
+        elif self.open_at is not None:
+            reason = f"a subgroup of index {self.open_at} has a stable nilpotent quotient, but the proof that it is nilpotent stayed open"
+        elif self.budget.out_of_time:
+            reason = "no witness within the time given"
+        else:
+            reason = f"no witness within effort {self.plan.effort}"
+        return Verdict(
+            self.presentation,
+            UNDECIDED,
+            reason,
+            self.searched,
+            self.plan.effort,
+            time.monotonic() - self.began,
+            lowindex.__version__,
+            open_at=self.open_at,
+        )
+
+
+def _reason(summary: dict[str, Any], visit: Visit) -> str:
+    if summary["finite_order"] is not None:
+        return f"finite of order {summary['finite_order']}"
+    kind = "abelian" if summary["class"] == 1 else f"nilpotent of class {summary['class']}"
+    return f"{kind} subgroup of index {summary['index']} ({visit.how})"
+
+
+def _generators(visit: Visit, proof: ChainProof) -> tuple[Word, ...]:
+    """The elements of weight 1 of the chain as words of the group: they generate the subgroup."""
+    words = visit.subgroup.generators
+    return tuple(
+        words[symbol - 1] for symbol, weight in zip(proof.symbols, proof.group.weights, strict=True) if weight == 1
+    )

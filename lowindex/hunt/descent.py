@@ -1,0 +1,58 @@
+"""The descent through Fitting subgroups.
+
+From H = G on: as long as H has a finite quotient Q that is not nilpotent, go to the preimage of Fit(Q). What is virtually nilpotent in G
+and normal stays inside, so when an H turns out to be nilpotent it is exactly the Fitting subgroup of G. By K. A. Hirsch (1946) a
+polycyclic-by-finite group all of whose finite quotients are nilpotent is nilpotent, so for virtually nilpotent G every H that
+is not nilpotent has such a quotient.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from lowindex.budget import Budget
+from lowindex.hunt.visit import Visit
+from lowindex.quotients import Cut, layer_cuts, permutation_cut, twisted_characters
+from lowindex.subgroups import SubgroupSearch
+from lowindex.words import Presentation
+
+QUICK_PROOF = 8
+"""A first proof may take one part in this many of what is left; the last one takes everything."""
+
+LARGEST_DEGREE = 24
+
+
+def descend(start: Visit, *, reach: int, budget: Budget) -> Iterator[tuple[Visit, Budget]]:
+    """The subgroups to try a proof on, each with the budget for it. The caller stops when a proof is found."""
+    visit = start
+    while not budget.exhausted:
+        cut = twisted_characters(visit.rank, visit.relators, visit.homology, budget=budget)
+        if cut is None and visit.quotient.stable:
+            yield visit, budget.part(budget.left // QUICK_PROOF)
+        cut = cut or next(layer_cuts(visit.rank, visit.relators, budget=budget.part(budget.left // 4)), None)
+        cut = cut or first_permutation_cut(visit, budget.part(budget.left // 3))
+        if cut is None:
+            if visit.quotient.stable:
+                yield visit, budget
+            return
+        if visit.index * cut.table.index > reach:
+            return
+        visit = visit.below(cut.table, how=f"{cut.kind}: {cut.detail}")
+
+
+def first_permutation_cut(visit: Visit, budget: Budget) -> Cut | None:
+    """The cut of the first transitive image of small degree that is not nilpotent."""
+    group = Presentation.from_relators(visit.rank, visit.relators)
+    seen: set[int] = set()
+    for degree in (4, 6, 8, 12, LARGEST_DEGREE):
+        search = SubgroupSearch(group, degree, budget=budget.part(max(1, budget.left // 2)))
+        for found in search:
+            key = hash(found.table)
+            if found.index > 2 and key not in seen:
+                seen.add(key)
+                budget.spend(3000)
+                if cut := permutation_cut(found.table.permutations):
+                    return cut
+            if budget.exhausted:
+                return None
+    return None
