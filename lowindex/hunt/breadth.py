@@ -34,7 +34,8 @@ class Breadth:
                 table = pull_back(found.table, self.start.images)
                 how = f"class {self.classes} of the subgroups by index"
                 visit = Visit(self.start.presentation, table, max_class=self.start.max_class, budget=self.budget, how=how)
-                if visit.quotient.stable and visit.quotient.nilpotency_class:
+                quotient = visit.quotient(visit.max_class)
+                if quotient.stable and quotient.nilpotency_class:
                     yield visit, self.budget.part(self.budget.left // 12)
             self.nodes += search.nodes
             if not search.finished:

@@ -12,12 +12,15 @@ from collections.abc import Iterator
 
 from lowindex.budget import Budget
 from lowindex.hunt.visit import Visit
-from lowindex.quotients import Cut, layer_cuts, permutation_cut, twisted_characters
+from lowindex.quotients import Cut, induced_cuts, layer_cuts, permutation_cut, twisted_characters
 from lowindex.subgroups import SubgroupSearch
 from lowindex.words import Presentation
 
 QUICK_PROOF = 8
 """A first proof may take one part in this many of what is left; the last one takes everything."""
+
+QUICK_CLASS = 4
+"""The class up to which the nilpotent quotient is computed before other quotients are looked for."""
 
 LARGEST_DEGREE = 24
 
@@ -27,12 +30,13 @@ def descend(start: Visit, *, reach: int, budget: Budget) -> Iterator[tuple[Visit
     visit = start
     while not budget.exhausted:
         cut = twisted_characters(visit.rank, visit.relators, visit.homology, budget=budget)
-        if cut is None and visit.quotient.stable:
+        if cut is None and visit.quotient(QUICK_CLASS).stable:
             yield visit, budget.part(budget.left // QUICK_PROOF)
         cut = cut or next(layer_cuts(visit.rank, visit.relators, budget=budget.part(budget.left // 4)), None)
+        cut = cut or next(induced_cuts(visit.rank, visit.relators, budget=budget.part(budget.left // 3)), None)
         cut = cut or first_permutation_cut(visit, budget.part(budget.left // 3))
         if cut is None:
-            if visit.quotient.stable:
+            if visit.quotient(visit.max_class).stable:
                 yield visit, budget
             return
         if visit.index * cut.table.index > reach:

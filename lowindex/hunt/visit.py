@@ -27,6 +27,7 @@ class Visit:
         self.max_class = max_class
         self.budget = budget
         self.how = how
+        self._quotient: NilpotentQuotient | None = None
 
     @property
     def index(self) -> int:
@@ -62,10 +63,12 @@ class Visit:
         """H_1 of H."""
         return abelianization(self.rank, self.relators)
 
-    @cached_property
-    def quotient(self) -> NilpotentQuotient:
-        """The nilpotent quotient of H up to the class of the plan."""
-        return nilpotent_quotient(self.rank, self.relators, max_class=self.max_class, budget=self.budget)
+    def quotient(self, max_class: int) -> NilpotentQuotient:
+        """The nilpotent quotient of H up to this class (a larger one when it is known already)."""
+        known = self._quotient
+        if known is None or not known.stable and known.nilpotency_class < max_class:
+            self._quotient = known = nilpotent_quotient(self.rank, self.relators, max_class=max_class, budget=self.budget)
+        return known
 
     def proof(self, budget: Budget) -> ChainProof | None:
         """A proof that H is nilpotent, if the budget is enough to find one."""

@@ -219,8 +219,10 @@ class _Attempt:
         seeds = [*self.reduced.active, *self.given]
         for order, longest in self.orders():
             part = budget.part(share)
+            known = len(self.reduced.derivation.words)
             goals = self.run(order, longest, seeds, part)
             if goals is None:
+                self.reduced.derivation.forget_from(known)
                 continue
             proof = self.reduced.derivation.cut(goals)
             used = self.reduced.derivation.used(goals)

@@ -34,12 +34,12 @@ def twisted_characters(rank: int, relators: Sequence[Word], homology: Abelianiza
     hits: list[tuple[int, tuple[int, ...]]] = []
     primes: dict[int, tuple[int, int]] = {}
     for m in _orders(homology):
-        for values in islice(_characters(homology, m), PER_ORDER):
+        for values in islice(characters(homology, m), PER_ORDER):
             if budget.exhausted:
                 break
             for q in _primes(m):
                 budget.spend(5 + sum(map(len, relators)) // 4 + rank * len(relators) // 20)
-                if _has_crossed(rank, relators, values, m, q):
+                if has_crossed(rank, relators, values, m, q):
                     hits.append((m, values))
                     primes[m] = m, q
                     break
@@ -52,7 +52,7 @@ def _orders(homology: Abelianization) -> list[int]:
     return sorted({*divisors, *(ORDERS if homology.betti else ())})
 
 
-def _characters(homology: Abelianization, m: int) -> Iterator[tuple[int, ...]]:
+def characters(homology: Abelianization, m: int) -> Iterator[tuple[int, ...]]:
     """The characters of order exactly m as values in Z/m on the generators, one of each class under the units of Z/m."""
     steps = [m // gcd(m, d) for d in homology.torsion] + [1] * homology.betti
     units = [u for u in range(2, m) if gcd(u, m) == 1]
@@ -67,8 +67,12 @@ def _characters(homology: Abelianization, m: int) -> Iterator[tuple[int, ...]]:
 def _primes(m: int) -> list[int]:
     """Two small primes that are 1 mod m, and a larger one."""
     found = [q for q in range(m + 1, 100 * m + 100, m) if _is_prime(q)][:2]
-    large = next(q for q in range(10_000 // m * m + 1, 10**6, m) if _is_prime(q))
-    return [large, *found]
+    return [large_prime(m), *found]
+
+
+def large_prime(m: int) -> int:
+    """A prime near 10,000 that is 1 mod m."""
+    return next(q for q in range(10_000 // m * m + 1, 10**6, m) if _is_prime(q))
 
 
 def _is_prime(n: int) -> bool:
@@ -84,7 +88,8 @@ def root_of_unity(m: int, q: int) -> int:
     raise AssertionError(f"no element of order {m} modulo {q}")
 
 
-def _has_crossed(rank: int, relators: Sequence[Word], values: Sequence[int], m: int, q: int) -> bool:
+def has_crossed(rank: int, relators: Sequence[Word], values: Sequence[int], m: int, q: int) -> bool:
+    """Whether the character with these values in Z/m, m dividing q - 1, has a crossed homomorphism to F_q that is not principal."""
     root = root_of_unity(m, q)
     rows = jacobian_mod(relators, [pow(root, v, q) for v in values], q)
     return rank > 1 and (not rows or nmod_mat(len(rows), rank, [x for row in rows for x in row], q).rank() < rank - 1)

@@ -23,8 +23,14 @@ from lowindex.words import Word
 Goal: TypeAlias = Hashable
 """What names a goal."""
 
-LONGEST_PAIR = 400
+LONGEST_PAIR = 240
 """Pairs that would give a longer relator are not looked at."""
+
+LONGEST_OVERLAP = 120
+"""Longer relators only rewrite; their overlaps (and the memory for them) are left out."""
+
+MOST_PAIRS = 400_000
+"""When more pairs wait, the longer half is given up."""
 
 
 class Completion(RelatorSet):
@@ -42,6 +48,7 @@ class Completion(RelatorSet):
         self._waiting: list[tuple[int, int]] = []
         self._aligned: set[tuple[int, int, int, int]] = set()
         self._count = self._tried = 0
+        self._longest = LONGEST_PAIR
         self._news = True
 
     def set_goals(self, goals: Mapping[Goal, Word], solves: Mapping[Goal, int]) -> None:
@@ -190,7 +197,8 @@ class Completion(RelatorSet):
         rules = super()._activate(number, word)
         if rules:
             self._news = True
-            heapq.heappush(self._waiting, (len(word), number))
+            if len(word) <= LONGEST_OVERLAP:
+                heapq.heappush(self._waiting, (len(word), number))
         return rules
 
     def eliminate(self, generator: int, equation: int) -> None:
@@ -236,13 +244,22 @@ class Completion(RelatorSet):
         """Put a pair on the heap, once for each way of laying the two cyclic words along each other."""
         size = len(first.lhs) + len(first.rhs) + len(second.lhs) + len(second.rhs) - 2 * overlap
         self._tried += 1
-        if size > LONGEST_PAIR:
+        if size > self._longest:
             return
         place = self._alignment(first, second, overlap)
         if place not in self._aligned:
             self._aligned.add(place)
             self._count += 1
             heapq.heappush(self._pairs, (size, self._count, first, second, overlap))
+            if self._count % MOST_PAIRS == 0:
+                self._give_up_long_pairs()
+
+    def _give_up_long_pairs(self) -> None:
+        """Keep the shorter half of the pairs and take no more of the others' size."""
+        self._pairs = heapq.nsmallest(MOST_PAIRS // 2, self._pairs)
+        self._aligned.clear()
+        if len(self._pairs) == MOST_PAIRS // 2:
+            self._longest = self._pairs[-1][0]
 
     def _alignment(self, first: Rule, second: Rule, overlap: int) -> tuple[int, int, int, int]:
         """Where the longest common piece around the overlap starts in both relators, read so that the first is not inverted."""

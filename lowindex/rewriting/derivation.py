@@ -76,6 +76,11 @@ class Derivation:
         self.factors.append(tuple(factors))
         return len(self.words) - 1
 
+    def forget_from(self, number: int) -> None:
+        """Drop the equations from this number on (a search that failed made them and nothing else uses them)."""
+        del self.words[number:]
+        del self.factors[number:]
+
     def holds(self, number: int) -> bool:
         """Whether the factors of an equation multiply out to its word (a given one holds)."""
         factors = self.factors[number]

@@ -18,6 +18,15 @@ from lowindex.rewriting.order import Order
 from lowindex.rewriting.strings import INVERSE_LETTER, inverted, joined, letter_of
 
 
+MOST_STEPS = 20_000
+"""Letters looked at before one rewriting is given up."""
+
+
+def longest_allowed(word: str) -> int:
+    """A rewriting is given up, too, when the word has grown beyond this length: some orderings let words explode."""
+    return 2 * len(word) + 400
+
+
 class Rule(NamedTuple):
     """lhs -> rhs; see the head of this file. equation = -1 for free reduction."""
 
@@ -92,10 +101,10 @@ class RuleSet:
         return form[rule.offset :]
 
     def reduce(self, word: str) -> str:
-        """The word rewritten until no left side is left in it, leftmost end first."""
+        """The word rewritten until no left side is left in it, leftmost end first (or MOST_STEPS were taken)."""
         by_lhs, ends = self.by_lhs, self.ends
-        end = 2
-        while end <= len(word):
+        end, limit, longest = 2, self.scanned + MOST_STEPS, longest_allowed(word)
+        while end <= len(word) <= longest and self.scanned < limit:
             self.scanned += 1
             for length in ends.get(word[end - 2 : end], ()):
                 if length <= end and (rule := by_lhs.get(word[end - length : end])):
@@ -108,8 +117,8 @@ class RuleSet:
     def reduce_logged(self, word: str, prefix: str, factors: list[Factor]) -> str:
         """As `reduce`; appends the factors of every step, conjugated by `prefix` as well."""
         by_lhs, ends = self.by_lhs, self.ends
-        end = 2
-        while end <= len(word):
+        end, limit, longest = 2, self.scanned + MOST_STEPS, longest_allowed(word)
+        while end <= len(word) <= longest and self.scanned < limit:
             self.scanned += 1
             for length in ends.get(word[end - 2 : end], ()):
                 if length <= end and (rule := by_lhs.get(word[end - length : end])):
