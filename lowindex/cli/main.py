@@ -1,0 +1,46 @@
+"""lowindex COMMAND ...: a thin reader of the library."""
+
+from __future__ import annotations
+
+import argparse
+import os
+import sys
+from collections.abc import Sequence
+
+from lowindex import __version__
+from lowindex.cli import check, hunt, subgroups
+from lowindex.cli.console import complain
+from lowindex.errors import LowindexError
+
+
+def parser() -> argparse.ArgumentParser:
+    """The parser of the whole command line."""
+    top = argparse.ArgumentParser(
+        prog="lowindex",
+        description="Decides whether a finitely presented group has a nilpotent subgroup of finite index (equivalently, polynomial "
+        "growth), with a witness that an independent checker accepts.",
+    )
+    top.add_argument("--version", action="version", version=f"lowindex {__version__}")
+    commands = top.add_subparsers(title="commands", metavar="COMMAND", required=True)
+    for module in (hunt, check, subgroups):
+        module.add(commands)
+    return top
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run one command; the exit code."""
+    chosen = parser().parse_args(arguments)
+    try:
+        return int(chosen.run(chosen))
+    except LowindexError as error:
+        complain(error)
+        return 2
+    except KeyboardInterrupt:
+        return 130
+    except BrokenPipeError:
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return 1
+
+
+if __name__ == "__main__":
+    sys.exit(main())
