@@ -8,53 +8,53 @@ from typing import Any, NoReturn
 
 from .refused import Refused, require
 
-MOST_CHARACTERS = 512_000_000
+MOST_CHARACTERS = 32_000_000
+MOST_BRACKETS = 3_000_000
 LONGEST_INTEGER = 40
-DEEPEST = 12
+DEEPEST = 8
 
-_BRACKETS = re.compile(r'"(?:[^"\\]|\\.)*"|[\[{\]}]')
-
-
-def _pairs(pairs: list[tuple[str, Any]]) -> dict[str, Any]:
-    found = dict(pairs)
-    if len(found) != len(pairs):
-        raise Refused("an object has the same key twice")
-    return found
-
-
-def _integer(digits: str) -> int:
-    if len(digits) > LONGEST_INTEGER:
-        raise Refused(f"an integer has more than {LONGEST_INTEGER} digits")
-    return int(digits)
-
-
-def _no_float(text: str) -> NoReturn:
-    raise Refused(f"{text[:20]} is not an integer")
-
-
-def _check_depth(text: str) -> None:
-    depth = 0
-    for match in _BRACKETS.finditer(text):
-        mark = match.group()[0]
-        if mark in "[{":
-            depth += 1
-            require(depth <= DEEPEST, f"brackets are nested more than {DEEPEST} deep")
-        elif mark in "]}":
-            depth -= 1
+_MARK = re.compile(r'"(?:[^"\\]|\\.)*+"?|[\[{\]}]')
 
 
 def parse(text: str) -> dict[str, Any]:
     """The object that the text spells."""
     require(len(text) <= MOST_CHARACTERS, f"the text has more than {MOST_CHARACTERS} characters")
-    _check_depth(text)
+    _count_brackets(text)
     try:
         value = json.loads(
-            text, object_pairs_hook=_pairs, parse_int=_integer, parse_float=_no_float, parse_constant=_no_float
+            text, object_pairs_hook=_object, parse_int=_integer, parse_float=_no_integer, parse_constant=_no_integer
         )
     except (ValueError, RecursionError) as error:
         raise Refused(f"not JSON: {error}") from None
     require(type(value) is dict, "the witness is not an object")
     return value  # type: ignore[no-any-return]
+
+
+def _count_brackets(text: str) -> None:
+    depth = count = 0
+    for match in _MARK.finditer(text):
+        mark = match.group()[0]
+        if mark in "[{":
+            depth, count = depth + 1, count + 1
+            require(depth <= DEEPEST, f"brackets are nested more than {DEEPEST} deep")
+            require(count <= MOST_BRACKETS, f"the text has more than {MOST_BRACKETS} lists and objects")
+        elif mark in "]}":
+            depth -= 1
+
+
+def _object(pairs: list[tuple[str, Any]]) -> dict[str, Any]:
+    found = dict(pairs)
+    require(len(found) == len(pairs), "an object has the same key twice")
+    return found
+
+
+def _integer(digits: str) -> int:
+    require(len(digits) <= LONGEST_INTEGER, f"an integer has more than {LONGEST_INTEGER} digits")
+    return int(digits)
+
+
+def _no_integer(text: str) -> NoReturn:
+    raise Refused(f"{text[:20]} is not an integer")
 
 
 def fields(value: Any, names: tuple[str, ...], where: str) -> tuple[Any, ...]:
@@ -74,9 +74,15 @@ def integer(value: Any, where: str, low: int, high: int) -> int:
     return value  # type: ignore[no-any-return]
 
 
-def listing(value: Any, where: str) -> list[Any]:
-    """A list."""
+def integers(value: Any, where: str, low: int, high: int) -> list[int]:
+    """A list of integers in a range."""
+    return [integer(item, f"entry {k} of {where}", low, high) for k, item in enumerate(listing(value, where))]
+
+
+def listing(value: Any, where: str, length: int | None = None) -> list[Any]:
+    """A list, of this length if one is given."""
     require(type(value) is list, f"{where} is not a list")
+    require(length is None or len(value) == length, f"{where} has length {len(value)}, not {length}")
     return value  # type: ignore[no-any-return]
 
 

@@ -2,20 +2,28 @@
 
 from __future__ import annotations
 
+import re
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from . import not_virtually_nilpotent, virtually_nilpotent
 from .parse import fields, integer, listing, parse, string, word
 from .refused import Refused, require
 from .table import Table
-from .virtually_nilpotent import check_virtually_nilpotent
 from .words import Word, digest, group_text, reduced
 
 FORMAT = "lowindex witness 1"
 
-POSITIVE = "virtually nilpotent"
+CLAIMS: dict[str, tuple[tuple[str, ...], Callable[[dict[str, Any], Table], dict[str, Any]]]] = {
+    "virtually nilpotent": (virtually_nilpotent.KEYS, virtually_nilpotent.check),
+    "not virtually nilpotent": (not_virtually_nilpotent.KEYS, not_virtually_nilpotent.check),
+}
+"""For each claim the keys that its witnesses have of their own, and the function that checks them and computes the summary."""
 
-MARKS = " \t\n,|<>⟨⟩()[]{}^*·=#:"
+_NAME = re.compile(r"[^\W\d_][\w'′]*")
+
+LONGEST_VERSION = 100
 
 
 @dataclass(frozen=True)
@@ -27,38 +35,39 @@ class Report:
     summary: dict[str, Any]
 
     def __str__(self) -> str:
-        facts = ", ".join(f"{key.replace('_', ' ')} {value}" for key, value in self.summary.items() if value is not None)
-        return f"{self.group} is {self.claim}: {facts}"
+        bound = "class at most" if self.summary.get("hirsch_length", 0) is None else "class"
+        names = {"class": bound, "hirsch_length": "Hirsch length", "growth_degree": "growth degree", "finite_order": "order"}
+        facts = (f"{names.get(key, key)} {value}" for key, value in self.summary.items() if value is not None)
+        return f"{self.group} is {self.claim}: {', '.join(facts)}"
 
 
-def check(text: str, *, presentation: tuple[list[str], list[Word]] | None = None) -> Report:
+def check(text: str, *, presentation: tuple[Sequence[str], Sequence[Sequence[int]]] | None = None) -> Report:
     """Accept or refuse (Refused) a witness. `presentation`: (names, relators) that the reader has in mind; a witness about another one
-    is refused."""
+    is refused. The same one has the same names and, after free reduction, the same nonempty relators in the same order."""
     value = parse(text)
     require(value.get("format") == FORMAT, f"the format is not {FORMAT!r}")
     claim = value.get("claim")
-    require(claim == POSITIVE, f"unknown claim {str(claim)[:60]!r}")
-    keys = ("format", "claim", "group", "table", "symbols", "lemmas", "chain", "goals", "summary", "made by")
-    fields(value, keys, "the witness")
+    require(type(claim) is str and claim in CLAIMS, f"unknown claim {str(claim)[:60]!r}")
+    keys, check_claim = CLAIMS[str(claim)]
+    fields(value, ("format", "claim", "group", "table", *keys, "summary", "made by"), "the witness")
     names, relators, printed = _group(value["group"])
     if presentation is not None:
-        given = [tuple(w) for w in (reduced(w) for w in presentation[1]) if w]
+        given = [letters for letters in map(reduced, presentation[1]) if letters]
         require((names, relators) == (list(presentation[0]), given), "the witness is about another presentation")
-    _provenance(value["made by"], printed)
-    table = Table(value["table"], len(names), relators)
+    _check_provenance(value["made by"], printed)
     try:
-        summary = check_virtually_nilpotent(value, table, relators)
+        summary = check_claim(value, Table(value["table"], len(names), relators))
     except RecursionError:
-        raise Refused("the chain is nested too deeply to be multiplied out") from None
-    _same_summary(value["summary"], summary)
-    return Report(POSITIVE, printed, summary)
+        raise Refused("the stack of calls has no room left for the chain") from None
+    _check_summary(value["summary"], summary)
+    return Report(str(claim), printed, summary)
 
 
 def _group(value: Any) -> tuple[list[str], list[Word], str]:
     names, relators, text = fields(value, ("names", "relators", "text"), "group")
-    names = [string(name, "a generator's name") for name in listing(names, "group.names")]
+    for k, name in enumerate(listing(names, "group.names"), 1):
+        require(_NAME.fullmatch(string(name, f"the name of generator {k}")), f"the name of generator {k} is not a letter and letters, digits, _ or '")
     require(len(set(names)) == len(names), "two generators have the same name")
-    require(all(name and not set(name) & set(MARKS) for name in names), "a generator's name is empty or has a mark in it")
     words = [word(item, f"relator {k}", len(names)) for k, item in enumerate(listing(relators, "group.relators"))]
     for k, item in enumerate(words):
         require(item and item == reduced(item), f"relator {k} is empty or not freely reduced")
@@ -67,14 +76,14 @@ def _group(value: Any) -> tuple[list[str], list[Word], str]:
     return names, words, printed
 
 
-def _provenance(value: Any, printed: str) -> None:
+def _check_provenance(value: Any, printed: str) -> None:
     version, effort, stamp = fields(value, ("version", "effort", "digest"), "made by")
-    string(version, "made by: version")
+    require(len(string(version, "made by: version")) <= LONGEST_VERSION, "made by: the version is too long")
     integer(effort, "made by: effort", 0, 1000)
     require(stamp == digest(printed), "made by: the digest is not that of group.text")
 
 
-def _same_summary(value: Any, computed: dict[str, Any]) -> None:
+def _check_summary(value: Any, computed: dict[str, Any]) -> None:
     fields(value, tuple(computed), "summary")
     for key, right in computed.items():
         require(_same(value[key], right), f"summary: {key} is {str(right)[:60]}, not {str(value[key])[:60]}")

@@ -42,8 +42,8 @@ def run(arguments: argparse.Namespace) -> int:
     groups = [group for source in arguments.source for group in read_source(source)]
     if arguments.seconds is not None and not arguments.seconds > 0:
         raise InputError(f"--seconds must be positive, not {arguments.seconds}")
-    from lowindex.hunt import UNDECIDED, hunt, plan_for
-    from lowindex.hunt.kernels import kernels_are_cached
+    from lowindex.decision import UNDECIDED, hunt, plan_for
+    from lowindex.decision.kernels import kernels_are_cached
 
     plan_for(arguments.effort)
     if not kernels_are_cached():
@@ -76,6 +76,6 @@ def _witness_path(name: str | None, number: int, groups: int) -> Path | None:
 
 
 def _described(group: Presentation, verdict: object, saved: str | None) -> str:
-    from lowindex.hunt.text import describe
+    from lowindex.decision.text import describe
 
     return describe(group, verdict, saved)  # type: ignore[arg-type]

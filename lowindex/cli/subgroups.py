@@ -41,7 +41,7 @@ def run(arguments: argparse.Namespace) -> int:
 
 def _count(group: Presentation, arguments: argparse.Namespace) -> None:
     from lowindex.budget import Budget
-    from lowindex.subgroups import count_classes
+    from lowindex.search import count_classes
 
     counts = count_classes(group, arguments.index, budget=Budget())
     numbers = {
@@ -64,7 +64,7 @@ def _list(group: Presentation, arguments: argparse.Namespace) -> None:
     from lowindex.algebra import abelianization
     from lowindex.budget import Budget
     from lowindex.cosets import subgroup_presentation
-    from lowindex.subgroups import SubgroupSearch
+    from lowindex.search import SubgroupSearch
 
     search = SubgroupSearch(group, arguments.index, budget=Budget())
     for found in sorted(search, key=lambda item: (item.index, item.table.lists)):

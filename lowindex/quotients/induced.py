@@ -21,7 +21,7 @@ from lowindex.budget import Budget
 from lowindex.cosets import CosetTable, SchreierTree, SubgroupPresentation, subgroup_presentation, vector_table
 from lowindex.quotients.characters import characters, has_crossed, large_prime, root_of_unity
 from lowindex.quotients.cut import Cut
-from lowindex.subgroups import SubgroupSearch
+from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation, Word
 
 Matrix = NDArray[np.int64]

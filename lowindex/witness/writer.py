@@ -12,6 +12,7 @@ from pathlib import Path
 from typing import Any
 
 from lowindex.errors import InputError
+from lowindex.witness.claims import Claim
 
 
 @dataclass(frozen=True)
@@ -63,6 +64,13 @@ class Witness:
             raise InputError(f"the witness cannot be written to {str(target)!r}: {error.strerror}; name another path") from None
 
 
-def canonical(value: dict[str, Any]) -> str:
-    """The object as text, in the order of its keys."""
-    return json.dumps(value, ensure_ascii=False, separators=(",", ":"))
+def write(claim: Claim) -> Witness:
+    """The witness of a claim: its object as text, in the order of its keys.
+
+    >>> from lowindex.words import Presentation
+    >>> from lowindex.witness.claims import NotVirtuallyNilpotent, SmallCancellation, Subject
+    >>> subject = Subject(Presentation.parse("⟨a, b | ⟩"), ((0,), (0,)), version="0", effort=1)
+    >>> write(NotVirtuallyNilpotent(subject, SmallCancellation(), index=1)).text[:68]
+    '{"format":"lowindex witness 1","claim":"not virtually nilpotent","gr'
+    """
+    return Witness(json.dumps(claim.content(), ensure_ascii=False, separators=(",", ":")))

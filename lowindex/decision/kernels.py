@@ -10,4 +10,4 @@ def kernels_are_cached() -> bool:
     import lowindex
 
     package = Path(lowindex.__file__).parent
-    return any((package / "subgroups" / "__pycache__").glob("search_kernel.search_slice*.nbc"))
+    return any((package / "search" / "__pycache__").glob("search_kernel.search_slice*.nbc"))

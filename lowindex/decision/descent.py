@@ -11,9 +11,9 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from lowindex.budget import Budget
-from lowindex.hunt.visit import Visit
+from lowindex.decision.visit import Visit
 from lowindex.quotients import Cut, induced_cuts, layer_cuts, permutation_cut, twisted_characters
-from lowindex.subgroups import SubgroupSearch
+from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation
 
 QUICK_PROOF = 8

@@ -114,7 +114,7 @@ class SubgroupSearch:
 
     def _advance(self, *, listing: bool) -> bool:
         """Run slices up to the next table (True), the end, or the end of the budget (False)."""
-        from lowindex.subgroups.search_kernel import search_slice
+        from lowindex.search.search_kernel import search_slice
 
         while not self.finished and not self.budget.exhausted:
             cap = min(SLICE, 100 * self.budget.left + 1000)
@@ -199,3 +199,8 @@ def count_classes(presentation: Presentation, index: int, *, budget: Budget) -> 
         classes, subgroups, normal = (tuple(int(x) for x in row[1:]) for row in search.counts)
         best = SubgroupCounts(classes, subgroups, normal, n, search.nodes)
     return best
+
+
+def subgroups(presentation: Presentation, *, index: int, budget: Budget | None = None) -> SubgroupSearch:
+    """The classes of subgroups of index at most `index`, as an iterator with a budget (none: no limit)."""
+    return SubgroupSearch(presentation, index, budget=budget or Budget())

@@ -11,7 +11,7 @@ from itertools import product as pairs
 
 from lowindex.budget import Budget
 from lowindex.cosets import CosetTable, enumerate_cosets
-from lowindex.hunt.visit import Visit
+from lowindex.decision.visit import Visit
 from lowindex.words import Presentation, Word, product
 
 LARGEST_WITNESS = 12_000

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lowindex.hunt.verdict import UNDECIDED, Verdict
+from lowindex.decision.verdict import UNDECIDED, Verdict
 from lowindex.words import Presentation
 
 MOST_GENERATORS = 8

@@ -6,8 +6,8 @@ from collections.abc import Iterator
 
 from lowindex.budget import Budget
 from lowindex.cosets import pull_back
-from lowindex.hunt.visit import Visit
-from lowindex.subgroups import SubgroupSearch
+from lowindex.decision.visit import Visit
+from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation
 
 
