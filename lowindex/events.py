@@ -9,7 +9,7 @@ from typing import TypeAlias
 
 @dataclass(frozen=True)
 class Event:
-    """One report. `stage`: the engine ("descent", "breadth", ...); `text`: a line for people; `index`: of the subgroup in hand, 0 when none."""
+    """One report. `stage`: the lane ("descent", "breadth", ...); `text`: a line for people; `index`: of the subgroup in hand, or 0."""
 
     stage: str
     text: str

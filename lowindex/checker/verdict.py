@@ -66,7 +66,8 @@ def check(text: str, *, presentation: tuple[Sequence[str], Sequence[Sequence[int
 def _group(value: Any) -> tuple[list[str], list[Word], str]:
     names, relators, text = fields(value, ("names", "relators", "text"), "group")
     for k, name in enumerate(listing(names, "group.names"), 1):
-        require(_NAME.fullmatch(string(name, f"the name of generator {k}")), f"the name of generator {k} is not a letter and letters, digits, _ or '")
+        where = f"the name of generator {k}"
+        require(_NAME.fullmatch(string(name, where)), f"{where} is not a letter and letters, digits, _ or '")
     require(len(set(names)) == len(names), "two generators have the same name")
     words = [word(item, f"relator {k}", len(names)) for k, item in enumerate(listing(relators, "group.relators"))]
     for k, item in enumerate(words):

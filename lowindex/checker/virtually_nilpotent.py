@@ -79,8 +79,8 @@ class _Goals:
 
 
 def _check_isomorphism(chain: Chain, relators: list[Word], definitions: list[Word]) -> None:
-    """The nilpotent presentation is consistent, and the images make a homomorphism from H onto its group that takes each chain symbol to its
-    own generator."""
+    """The nilpotent presentation is consistent, and the images make a homomorphism from H onto its group that takes each chain symbol to
+    its own generator."""
     group = Nilpotent(chain.orders, chain.powers, chain.conjugates)
     group.require_consistent()
 

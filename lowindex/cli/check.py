@@ -10,6 +10,11 @@ from lowindex.cli.console import show
 from lowindex.cli.source import read_source, read_text
 from lowindex.errors import InputError
 
+EXAMPLE = """example:
+  lowindex check p4.json --for "⟨a, b | a^4, b^2, (a b)^4⟩"
+
+exit codes: 0 all accepted, 1 one refused, 2 unusable file"""
+
 
 def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
     """Add the command to the parser."""
@@ -17,11 +22,11 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         "check",
         help="check witnesses with the independent checker",
         description="Checks witnesses: standard library only, no search. lowindex/checker/FORMAT.md says what acceptance proves.",
-        epilog='example:\n  lowindex check p4.json --for "⟨a, b | a^4, b^2, (a b)^4⟩"\n\nexit codes: 0 all accepted, 1 one refused, 2 unusable file',
+        epilog=EXAMPLE,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("witness", nargs="+", metavar="WITNESS", help="a witness file")
-    parser.add_argument("--for", dest="source", metavar="SOURCE", help="the presentation in your hand; a witness about another one is refused")
+    parser.add_argument("--for", dest="source", metavar="SOURCE", help="the presentation in your hand; witnesses about others are refused")
     parser.add_argument("--json", action="store_true", help="one JSON object a witness")
     parser.set_defaults(run=run)
 

@@ -17,7 +17,7 @@ def read_source(source: str) -> list[Presentation]:
     stripped = source.strip()
     if source == "-":
         return parse_file(_decoded(sys.stdin.buffer.read(LARGEST_FILE + 1), "standard input"))
-    if stripped[:1] in ("<", "⟨") or ("<" in stripped or "⟨" in stripped) and not os.path.exists(source):
+    if stripped[:1] in ("<", "⟨") or (("<" in stripped or "⟨" in stripped) and not os.path.lexists(source)):
         return parse_file(source)
     return parse_file(read_text(source))
 

@@ -44,7 +44,7 @@ def _count(group: Presentation, arguments: argparse.Namespace) -> None:
     from lowindex.search import count_classes
 
     counts = count_classes(group, arguments.index, budget=Budget())
-    numbers = {
+    numbers: dict[str, Any] = {
         "index": list(range(1, counts.complete_to + 1)),
         "classes": list(counts.classes),
         "subgroups": list(counts.subgroups),

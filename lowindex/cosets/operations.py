@@ -6,6 +6,7 @@ from collections.abc import Callable, Sequence
 from typing import TypeVar
 
 import numpy as np
+from numpy.typing import ArrayLike
 
 from lowindex.cosets.reidemeister_schreier import SubgroupPresentation
 from lowindex.cosets.schreier import SchreierTree
@@ -85,7 +86,7 @@ def abelian_table(images: Sequence[Sequence[int]], moduli: Sequence[int], max_in
 
 
 def vector_table(
-    vectors: Sequence[Sequence[int]], matrices: Sequence[Sequence[Sequence[int]]], q: int, max_index: int
+    vectors: ArrayLike, matrices: Sequence[ArrayLike], q: int, max_index: int
 ) -> CosetTable | None:
     """The orbit of a list of row vectors over F_q under invertible matrices, one for every generator; None when it is longer than
     `max_index`."""

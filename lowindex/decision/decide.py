@@ -10,13 +10,13 @@ import lowindex
 from lowindex.budget import Budget
 from lowindex.checker import check
 from lowindex.cosets import CosetTable
-from lowindex.events import Event, Listener, silent
 from lowindex.decision.breadth import Breadth
 from lowindex.decision.descent import descend
 from lowindex.decision.finite import cyclic_visits, regular_table
 from lowindex.decision.plan import Plan, Stage, plan_for
 from lowindex.decision.verdict import UNDECIDED, YES, Verdict
 from lowindex.decision.visit import Visit
+from lowindex.events import Event, Listener, silent
 from lowindex.nilpotent import ChainProof
 from lowindex.witness import Witness, virtually_nilpotent
 from lowindex.words import Presentation, Word

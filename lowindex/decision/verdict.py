@@ -15,9 +15,9 @@ UNDECIDED = "undecided"
 
 @dataclass(frozen=True)
 class Verdict:
-    """`verdict`: one of the three above. For a decided group `witness` is what the checker accepted, and the numbers are the checker's. `generators`:
-    words of the group that generate the subgroup of index `index`. `searched`: what was covered, in numbers. `open_at`: index of
-    a subgroup whose nilpotent quotient is stable but whose proof stayed open."""
+    """`verdict`: one of the three above. For a decided group `witness` is what the checker accepted, and the numbers are the checker's.
+    `generators`: words of the group that generate the subgroup of index `index`. `searched`: what was covered, in numbers.
+    `open_at`: index of a subgroup whose nilpotent quotient is stable but whose proof stayed open."""
 
     presentation: Presentation
     verdict: str

@@ -66,7 +66,7 @@ class Visit:
     def quotient(self, max_class: int) -> NilpotentQuotient:
         """The nilpotent quotient of H up to this class (a larger one when it is known already)."""
         known = self._quotient
-        if known is None or not known.stable and known.nilpotency_class < max_class:
+        if known is None or (not known.stable and known.nilpotency_class < max_class):
             self._quotient = known = nilpotent_quotient(self.rank, self.relators, max_class=max_class, budget=self.budget)
         return known
 

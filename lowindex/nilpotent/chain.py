@@ -247,7 +247,7 @@ class _Attempt:
         system.set_goals({goal: word for goal, word in self.goals.items() if goal not in late}, {})
         if not system.run(work=budget.left):
             return None
-        system.set_goals({goal: self.goals[goal] for goal in late}, late)
+        system.set_goals({goal: self.goals[goal] for goal in late}, {goal: g for goal, g in late.items()})
         if not system.run(work=budget.left):
             return None
         return [system.proved[goal] for goal in self.goals]
@@ -263,11 +263,11 @@ def _symbols(rank: int, living: Sequence[int], group: NilpotentPresentation) -> 
     """The numbers of a_1..a_q among the symbols, and the words of those defined as commutators (numbered from rank + 1)."""
     symbols: list[int] = []
     definitions: list[Word] = []
-    for definition in group.definitions:
-        if definition[0] == "generator":
-            symbols.append(living[definition[1] - 1])
+    for _, *places in group.definitions:
+        if len(places) == 1:
+            symbols.append(living[places[0] - 1])
         else:
-            _, j, i = definition
+            j, i = places
             definitions.append(commutator((symbols[j],), (symbols[i],)))
             symbols.append(rank + len(definitions))
     return tuple(symbols), tuple(definitions)

@@ -16,7 +16,8 @@ from dataclasses import dataclass
 
 from flint import fmpz_mat
 
-from lowindex.rewriting import Factor, RelatorSet, RuleSet, Shortlex, strings as text
+from lowindex.rewriting import Factor, RelatorSet, RuleSet, Shortlex
+from lowindex.rewriting import strings as text
 
 Vector = tuple[int, ...]
 
@@ -53,11 +54,11 @@ class Lattice:
         """The relators of the shape t^-1 v t u, sorted and without repeats."""
         found: dict[Vector, Action] = {}
         for number, word in list(self.relators.active.items()):
-            if word.count(self.plus) == 1 == word.count(self.minus):
-                if self.letters.issuperset(word.replace(self.plus, "").replace(self.minus, "")):
-                    action = self._sorted(self._from_relator(word, number))
-                    if any(action.vector):
-                        found.setdefault(action.vector, action)
+            rest = word.replace(self.plus, "").replace(self.minus, "")
+            if word.count(self.plus) == 1 == word.count(self.minus) and self.letters.issuperset(rest):
+                action = self._sorted(self._from_relator(word, number))
+                if any(action.vector):
+                    found.setdefault(action.vector, action)
         return list(found.values())
 
     def _from_relator(self, word: str, number: int) -> Action:
@@ -120,7 +121,7 @@ class Lattice:
         if not actions:
             return []
         rows = fmpz_mat([[*map(int, action.vector)] for action in actions])
-        reduced, transform = rows.lll(transform=True)
+        reduced, transform = rows.lll(True)
         result: list[Action] = []
         for row in range(rows.nrows()):
             if any(int(reduced[row, k]) for k in range(rows.ncols())):

@@ -95,17 +95,13 @@ def abelian_quotient(rank: int, relators: Sequence[Word], prefer: Sequence[int] 
     first = [g for g in prefer if 1 <= g <= rank]
     order = first + [g for g in range(1, rank + 1) if g not in set(first)]
     rows = relation_matrix(rank, relators)
-    best: NilpotentQuotient | None = None
-    for turn in range(min(rank, 6) or 1):
-        # The generators written last survive.
-        columns = order[::-1] if turn == 0 else order[turn:] + order[:turn]
-        found = _hermite_quotient(rank, rows, columns)
-        if best is None or found.group.size < best.group.size:
-            best = found
-        homology = abelianization(rank, relators) if turn == 0 else homology
+    # The generators whose columns come last survive.
+    best = _hermite_quotient(rank, rows, order[::-1])
+    homology = abelianization(rank, relators)
+    for turn in range(1, min(rank, 6)):
         if best.group.size <= homology.betti + len(homology.torsion):
             break
-    assert best is not None
+        best = min(best, _hermite_quotient(rank, rows, order[turn:] + order[:turn]), key=lambda found: found.group.size)
     return best
 
 

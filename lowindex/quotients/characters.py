@@ -1,8 +1,8 @@
 """Twisted characters: metabelian quotients F_q^+ x| C_m found by linear algebra.
 
-Let chi: H -> C_m -> F_q^* be a character of order m > 1. Crossed homomorphisms H -> F_q with this action are the kernel of the Fox Jacobian at
-chi; the principal ones have dimension 1. When there are others, H maps onto F_q^+ x| C_m, whose Fitting subgroup is F_q^+: the cut
-is the kernel of chi.
+Let chi: H -> C_m -> F_q^* be a character of order m > 1. Crossed homomorphisms H -> F_q with this action are the kernel of the Fox
+Jacobian at chi; the principal ones have dimension 1. When there are others, H maps onto F_q^+ x| C_m, whose Fitting subgroup is
+F_q^+: the cut is the kernel of chi.
 """
 
 from __future__ import annotations

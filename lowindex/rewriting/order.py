@@ -68,7 +68,7 @@ class WeightedShortlex:
         weight = self._weight
         difference = sum([weight[c] for c in left]) - sum([weight[c] for c in right])
         if difference or len(left) != len(right):
-            return difference > 0 or difference == 0 and len(left) > len(right)
+            return difference > 0 or (difference == 0 and len(left) > len(right))
         return left.translate(self._table) > right.translate(self._table)
 
     def split(self, rotation: str) -> int:
@@ -77,7 +77,7 @@ class WeightedShortlex:
         first = 0
         for n, letter in enumerate(rotation, 1):
             first += self._weight[letter]
-            if 2 * first > total or 2 * first == total and self.greater(rotation[:n], inverted(rotation[n:])):
+            if 2 * first > total or (2 * first == total and self.greater(rotation[:n], inverted(rotation[n:]))):
                 return n
         return len(rotation)
 

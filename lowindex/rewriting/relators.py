@@ -180,7 +180,7 @@ class RelatorSet:
     def renumbered_images(self, rank: int) -> list[Word]:
         """Each of the generators 1..rank as a word in the living ones, these numbered as in `renumbered_words`."""
         place = self._places()
-        images = [(g,) for g in range(1, rank + 1)]
+        images: list[Word] = [(g,) for g in range(1, rank + 1)]
         for generator, word in self.solutions():
             images[generator - 1] = reduced(y for x in word for y in (images[x - 1] if x > 0 else inverse(images[-x - 1])))
         return [tuple([place[x] for x in word]) for word in images]

@@ -17,7 +17,6 @@ from lowindex.rewriting.derivation import Factor
 from lowindex.rewriting.order import Order
 from lowindex.rewriting.strings import INVERSE_LETTER, inverted, joined, letter_of
 
-
 MOST_STEPS = 20_000
 """Letters looked at before one rewriting is given up."""
 
@@ -141,9 +140,9 @@ class RuleSet:
         for end in range(2, len(double)):
             self.scanned += 1
             for size in ends.get(double[end - 2 : end], ()):
-                if size <= min(length, end) and (rule := by_lhs.get(double[end - size : end])):
-                    if len(rule.rhs) < size:
-                        return end - size
+                rule = by_lhs.get(double[end - size : end]) if size <= min(length, end) else None
+                if rule is not None and len(rule.rhs) < size:
+                    return end - size
         return -1
 
     def _uninstall(self, rule: Rule) -> None:

@@ -114,7 +114,9 @@ class SubgroupSearch:
 
     def _advance(self, *, listing: bool) -> bool:
         """Run slices up to the next table (True), the end, or the end of the budget (False)."""
-        from lowindex.search.search_kernel import search_slice
+        from lowindex.search.search_kernel import search_slice as kernel
+
+        search_slice: Any = kernel
 
         while not self.finished and not self.budget.exhausted:
             cap = min(SLICE, 100 * self.budget.left + 1000)

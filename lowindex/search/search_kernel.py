@@ -13,7 +13,6 @@ Arrays (n columns; inv[c] is the column of the inverse letter, c itself for an i
 Status: 0 step cap reached, 1 a table is complete (it stands in `table`, POINTS rows), 2 the search is over.
 """
 
-import numpy as np
 from numba import njit
 
 
@@ -166,7 +165,8 @@ def search_slice(
         if image == state[0]:
             state[0] += 1
         _fill(table, trail, state, inv, n, point, column, image)
-        if _deduce(table, trail, state, inv, n, words, starts, lengths, first, mark[top]):
-            if _first_in_class(table, state, n, label, named):
-                state[5] += 1
-                state[3] = 0
+        if not _deduce(table, trail, state, inv, n, words, starts, lengths, first, mark[top]):
+            continue
+        if _first_in_class(table, state, n, label, named):
+            state[5] += 1
+            state[3] = 0

@@ -184,9 +184,7 @@ class Reader:
         """One or more factors."""
         letters: list[int] = list(self._factor())
         while True:
-            if self.accept("*·"):
-                letters += self._factor()
-            elif self._starts_factor():
+            if self.accept("*·") or self._starts_factor():
                 letters += self._factor()
             else:
                 return reduced(letters)
@@ -219,9 +217,11 @@ class Reader:
         else:
             found = readings(run, self.names)
             if not found:
-                raise self.error(f"{shortened(run)} is not a product of the generators {shortened(', '.join(self.names))}{capital_hint(run, self.names)}")
+                generators = shortened(", ".join(self.names))
+                raise self.error(f"{shortened(run)} is not a product of the generators {generators}{capital_hint(run, self.names)}")
             if len(found) > 1:
-                raise self.error(f"{shortened(run)} can be read as {shortened(' '.join(found[0]))} and as {shortened(' '.join(found[1]))}: separate the factors")
+                one, two = (shortened(" ".join(parts)) for parts in found)
+                raise self.error(f"{shortened(run)} can be read as {one} and as {two}: separate the factors")
             parts = found[0]
         self.at = match.end()
         return [(self.names[name],) for name in parts]
