@@ -6,6 +6,6 @@ from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).resolve().parent.parent / "lowindex"))
 
-from checker.__main__ import main  # noqa: E402
+from checker.__main__ import main
 
 sys.exit(main(sys.argv[1:]))

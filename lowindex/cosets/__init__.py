@@ -1,6 +1,6 @@
 """Coset tables, Schreier trees, presentations of subgroups of finite index, coset enumeration."""
 
-from lowindex.cosets.enumeration import Enumeration, enumerate_cosets
+from lowindex.cosets.enumeration import Enumeration, EnumerationLog, enumerate_cosets, logged_enumeration
 from lowindex.cosets.graph import schreier_graph
 from lowindex.cosets.operations import (
     abelian_table,
@@ -18,6 +18,7 @@ from lowindex.cosets.table import CosetTable, column
 __all__ = [
     "CosetTable",
     "Enumeration",
+    "EnumerationLog",
     "SchreierTree",
     "SubgroupPresentation",
     "abelian_table",
@@ -26,6 +27,7 @@ __all__ = [
     "core",
     "enumerate_cosets",
     "intersection",
+    "logged_enumeration",
     "pull_back",
     "schreier_graph",
     "standard_form",

@@ -11,19 +11,25 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
 from lowindex.budget import Budget
-from lowindex.cosets import enumeration_kernel as kernel
+from lowindex.cosets import enumeration_kernel
 from lowindex.cosets.operations import standard_form
 from lowindex.cosets.table import CosetTable, column
 from lowindex.errors import InputError
 from lowindex.words import Presentation, Word, cyclic_form, inverse, reduced
 
+kernel: Any = enumeration_kernel
+
 SLICE = 2_000_000
 """Steps of a kernel between two looks at the budget."""
+
+MOST_LOGGED = 300_000
+"""Cosets of an enumeration whose log is kept."""
 
 STRATEGIES = ("felsch", "hlt")
 
@@ -94,9 +100,14 @@ class _Run:
         self.parent = np.zeros(capacity, np.int32)
         self.queue = np.zeros(capacity, np.int32)
         self.stack = np.zeros((max(1000, min(1_000_000, 4 * capacity)), 2), np.int32)
-        self.state = np.zeros(9, np.int64)
+        self.state = np.zeros(10, np.int64)
+        self.log = np.zeros((0, 3), np.int32)
         self.state[:2] = self.state[7] = 1
-        self.stuck = not kernel.begin(self.array, self.parent, self.stack, self.queue, self.state, *self.generators)
+        self.stuck = not kernel.begin(*self._base, *self.generators)
+
+    @property
+    def _base(self) -> tuple[Any, ...]:
+        return self.array, self.parent, self.stack, self.queue, self.state, self.log
 
     @property
     def peak(self) -> int:
@@ -108,18 +119,19 @@ class _Run:
         """Cosets defined in all."""
         return self._dropped + int(self.state[0])
 
-    def advance(self, cap: int) -> int:
-        """One slice of at most about `cap` steps; the steps taken."""
-        base = self.array, self.parent, self.stack, self.queue, self.state
+    def advance(self, cap: int, *, growing: bool = True) -> int:
+        """One slice of at most about `cap` steps; the steps taken. Without `growing` a full table ends the run."""
         if self.strategy == "felsch":
-            status = kernel.felsch_slice(*base, *self.conjugates, self.first, cap)
+            status = kernel.felsch_slice(*self._base, *self.conjugates, self.first, cap)
         else:
-            status = kernel.hlt_slice(*base, *self.relators, cap)
+            status = kernel.hlt_slice(*self._base, *self.relators, cap)
         spent = int(self.state[5])
         if status == 1:
             self.closed = True
-        elif status == 2:
+        elif status == 2 and growing:
             spent += self._make_room()
+        elif status == 2:
+            self.stuck = True
         return spent
 
     def _make_room(self) -> int:
@@ -129,9 +141,7 @@ class _Run:
         if self.strategy == "hlt" and 2 * capacity > self.max_cosets:
             row = int(self.state[3])
             while row < self.state[0]:
-                row = kernel.lookahead_slice(
-                    self.array, self.parent, self.stack, self.queue, self.state, *self.relators, row, SLICE
-                )
+                row = kernel.lookahead_slice(*self._base, *self.relators, row, SLICE)
                 spent += int(self.state[5])
         if self.state[1] < 0.9 * capacity:
             before = int(self.state[0])
@@ -174,9 +184,47 @@ def _conjugates(
     relators: Iterable[Word], columns: int
 ) -> tuple[tuple[NDArray[np.int32], NDArray[np.int32], NDArray[np.int32]], NDArray[np.int32]]:
     """All rotations of relators and their inverses, sorted by first column, then length; and where each first column starts."""
-    found = {form[i:] + form[:i] for word in relators for form in (word, inverse(word)) for i in range(len(word))}
-    rotations = sorted(found, key=lambda word: (column(word[0]), len(word), word))
+    rotations = sorted_rotations(relators)
     first = np.zeros(columns + 1, np.int32)
     for word in rotations:
         first[column(word[0]) + 1 :] += 1
     return packed(rotations), first
+
+
+def sorted_rotations(relators: Iterable[Word]) -> dict[Word, tuple[int, int, int]]:
+    """Every rotation of a relator or its inverse, with (number of the relator, sign, letters it is rotated by), sorted by first
+    column, then length."""
+    found: dict[Word, tuple[int, int, int]] = {}
+    for number, word in enumerate(relators):
+        for sign, form in ((1, word), (-1, inverse(word))):
+            for offset in range(len(form)):
+                found.setdefault(form[offset:] + form[:offset], (number, sign, offset))
+    return dict(sorted(found.items(), key=lambda item: (column(item[0][0]), len(item[0]), item[0])))
+
+
+@dataclass(frozen=True)
+class EnumerationLog:
+    """A Felsch enumeration over the trivial subgroup that closed: every definition (0, coset, column) and every trace with a consequence
+    (1, coset, number of the rotation), in order; `rotations` as in `sorted_rotations`. Cosets are never renumbered."""
+
+    order: int
+    steps: list[tuple[int, int, int]]
+    rotations: dict[Word, tuple[int, int, int]]
+
+
+def logged_enumeration(rank: int, relators: Sequence[Word], *, max_cosets: int, budget: Budget) -> EnumerationLog | None:
+    """Enumerate over the trivial subgroup and keep the log; None when that does not close within the budget and the cosets. Relators
+    must be cyclically reduced."""
+    run = _Run(Presentation.from_relators(rank, relators), (), "felsch", max_cosets)
+    run.conjugates, run.first = _conjugates(relators, 2 * rank)
+    max_cosets = min(max_cosets, MOST_LOGGED)
+    run._start(max_cosets)
+    run.log = np.zeros((16 * max_cosets, 3), np.int32)
+    while not budget.exhausted:
+        budget.spend(1 + run.advance(min(SLICE, 100 * budget.left + 1000), growing=False) // 100)
+        if run.closed and run.state[9] < run.log.shape[0]:
+            steps = [(int(a), int(b), int(c)) for a, b, c in run.log[: int(run.state[9])]]
+            return EnumerationLog(int(run.state[1]), steps, sorted_rotations(relators))
+        if run.closed or run.stuck:
+            return None
+    return None

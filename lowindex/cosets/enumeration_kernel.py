@@ -7,7 +7,8 @@ Arrays (n columns; column c and c ^ 1 belong to a letter and its inverse):
     queue      int32 (capacity,)     cosets that died and are not yet merged
     words, starts, lengths           words as columns, one behind the other
     first      int32 (n + 1,)        the cyclic conjugates whose first column is c are number first[c] .. first[c + 1] - 1
-    state      int64: USED, LIVE, TOP, ROW, COLUMN, STEPS, OVERFLOW, PEAK, RELATOR (see below)
+    log        int32 (room, 3)       definitions and traces with a consequence, in order; no room: nothing is logged
+    state      int64 (10,)           counters, named below
 Status returned by a slice: 0 step cap reached, 1 table closed, 2 table full.
 """
 
@@ -16,7 +17,7 @@ from numba import njit
 
 # Places in `state`, written as literals below because numba's cache does not see changes of globals:
 # 0 USED cosets numbered, 1 LIVE, 2 TOP of stack, 3 ROW and 4 COLUMN of the next slot to look at,
-# 5 STEPS done in this slice, 6 OVERFLOW of the stack (1: some deductions were dropped), 7 PEAK of live cosets, 8 RELATOR
+# 5 STEPS done in this slice, 6 OVERFLOW of the stack (1: some deductions were dropped), 7 PEAK of live cosets, 8 RELATOR, 9 LOGGED entries of the log
 
 
 @njit(cache=True, nogil=True)
@@ -37,6 +38,16 @@ def _push(stack, state, coset, column):
         state[2] += 1
     else:
         state[6] = 1
+
+
+@njit(cache=True, nogil=True)
+def _note(log, state, kind, coset, number):
+    """Log a definition (0, coset, column) or a trace with a consequence (1, coset, number of the word), while there is room."""
+    if state[9] < log.shape[0]:
+        log[state[9], 0] = kind
+        log[state[9], 1] = coset
+        log[state[9], 2] = number
+        state[9] += 1
 
 
 @njit(cache=True, nogil=True)
@@ -83,9 +94,9 @@ def _coincide(table, parent, stack, queue, state, left, right):
 
 
 @njit(cache=True, nogil=True)
-def _scan(table, parent, stack, queue, state, words, start, length, coset, fill):
+def _scan(table, parent, stack, queue, state, log, words, start, length, number, coset, fill):
     """Trace a word from both ends at a coset. A gap of one letter is a deduction, a closed trace with different ends a coincidence;
-    with `fill` longer gaps are filled by new cosets. Returns False when the table is full."""
+    with `fill` longer gaps are filled by new cosets. Returns False when the table is full. `number` is that of the word, for the log."""
     ahead = coset
     i = start
     j = start + length - 1
@@ -97,6 +108,7 @@ def _scan(table, parent, stack, queue, state, words, start, length, coset, fill)
             state[5] += 1
         if i > j:
             if ahead != behind:
+                _note(log, state, 1, coset, number)
                 _coincide(table, parent, stack, queue, state, ahead, behind)
             return True
         while j >= i and table[behind, words[j] ^ 1] >= 0:
@@ -104,9 +116,11 @@ def _scan(table, parent, stack, queue, state, words, start, length, coset, fill)
             j -= 1
             state[5] += 1
         if j < i:
+            _note(log, state, 1, coset, number)
             _coincide(table, parent, stack, queue, state, ahead, behind)
             return True
         if i == j:
+            _note(log, state, 1, coset, number)
             table[ahead, words[i]] = behind
             table[behind, words[i] ^ 1] = ahead
             _push(stack, state, ahead, words[i])
@@ -115,12 +129,13 @@ def _scan(table, parent, stack, queue, state, words, start, length, coset, fill)
             return True
         if state[0] >= table.shape[0]:
             return False
-        _define(table, parent, stack, state, ahead, words[i])
+        _define(table, parent, stack, state, log, ahead, words[i])
 
 
 @njit(cache=True, nogil=True)
-def _define(table, parent, stack, state, coset, column):
+def _define(table, parent, stack, state, log, coset, column):
     """A new coset as the image of a slot (the table must have room)."""
+    _note(log, state, 0, coset, column)
     new = state[0]
     parent[new] = new
     table[coset, column] = new
@@ -133,7 +148,7 @@ def _define(table, parent, stack, state, coset, column):
 
 
 @njit(cache=True, nogil=True)
-def _follow(table, parent, stack, queue, state, words, starts, lengths, first, cap):
+def _follow(table, parent, stack, queue, state, log, words, starts, lengths, first, cap):
     """Follow the deductions on the stack; False when the step cap was reached before it was empty."""
     while state[2] > 0:
         if state[5] >= cap:
@@ -144,16 +159,16 @@ def _follow(table, parent, stack, queue, state, words, starts, lengths, first, c
         for k in range(first[column], first[column + 1]):
             if parent[coset] != coset:
                 break
-            _scan(table, parent, stack, queue, state, words, starts[k], lengths[k], coset, False)
+            _scan(table, parent, stack, queue, state, log, words, starts[k], lengths[k], k, coset, False)
     return True
 
 
 @njit(cache=True, nogil=True)
-def felsch_slice(table, parent, stack, queue, state, words, starts, lengths, first, cap):
+def felsch_slice(table, parent, stack, queue, state, log, words, starts, lengths, first, cap):
     """Define the first empty slot in row order, follow every deduction, repeat."""
     state[5] = 0
     while True:
-        if not _follow(table, parent, stack, queue, state, words, starts, lengths, first, cap):
+        if not _follow(table, parent, stack, queue, state, log, words, starts, lengths, first, cap):
             return 0
         if state[6] == 1:
             # Dropped deductions: scan everything once more, from the first row.
@@ -162,7 +177,7 @@ def felsch_slice(table, parent, stack, queue, state, words, starts, lengths, fir
                 for k in range(first[table.shape[1]]):
                     if parent[coset] != coset:
                         break
-                    _scan(table, parent, stack, queue, state, words, starts[k], lengths[k], coset, False)
+                    _scan(table, parent, stack, queue, state, log, words, starts[k], lengths[k], k, coset, False)
             continue
         row = state[3]
         column = state[4]
@@ -178,11 +193,11 @@ def felsch_slice(table, parent, stack, queue, state, words, starts, lengths, fir
             return 1
         if state[0] >= table.shape[0]:
             return 2
-        _define(table, parent, stack, state, row, column)
+        _define(table, parent, stack, state, log, row, column)
 
 
 @njit(cache=True, nogil=True)
-def hlt_slice(table, parent, stack, queue, state, words, starts, lengths, cap):
+def hlt_slice(table, parent, stack, queue, state, log, words, starts, lengths, cap):
     """Scan and fill every relator at every live coset in turn, then fill its row. Deductions are not followed."""
     state[5] = 0
     while state[3] < state[0]:
@@ -193,7 +208,9 @@ def hlt_slice(table, parent, stack, queue, state, words, starts, lengths, cap):
                     return 0
                 if parent[row] != row:
                     break
-                if not _scan(table, parent, stack, queue, state, words, starts[state[8]], lengths[state[8]], row, True):
+                if not _scan(
+                    table, parent, stack, queue, state, log, words, starts[state[8]], lengths[state[8]], state[8], row, True
+                ):
                     return 2
                 state[2] = 0
                 state[8] += 1
@@ -201,7 +218,7 @@ def hlt_slice(table, parent, stack, queue, state, words, starts, lengths, cap):
                 if parent[row] == row and table[row, column] < 0:
                     if state[0] >= table.shape[0]:
                         return 2
-                    _define(table, parent, stack, state, row, column)
+                    _define(table, parent, stack, state, log, row, column)
                     state[2] = 0
         state[8] = 0
         state[3] += 1
@@ -212,14 +229,14 @@ def hlt_slice(table, parent, stack, queue, state, words, starts, lengths, cap):
 
 
 @njit(cache=True, nogil=True)
-def lookahead_slice(table, parent, stack, queue, state, words, starts, lengths, row, cap):
+def lookahead_slice(table, parent, stack, queue, state, log, words, starts, lengths, row, cap):
     """Scan every relator at the live cosets from `row` on without filling; the row to go on with, or the number of rows used."""
     state[5] = 0
     while row < state[0] and state[5] < cap:
         for k in range(starts.shape[0]):
             if parent[row] != row:
                 break
-            _scan(table, parent, stack, queue, state, words, starts[k], lengths[k], row, False)
+            _scan(table, parent, stack, queue, state, log, words, starts[k], lengths[k], k, row, False)
             state[2] = 0
         row += 1
         state[5] += 1
@@ -227,10 +244,10 @@ def lookahead_slice(table, parent, stack, queue, state, words, starts, lengths, 
 
 
 @njit(cache=True, nogil=True)
-def begin(table, parent, stack, queue, state, words, starts, lengths):
+def begin(table, parent, stack, queue, state, log, words, starts, lengths):
     """Trace the generators of the subgroup at coset 0, filling; False when the table is too small for that."""
     for k in range(starts.shape[0]):
-        if not _scan(table, parent, stack, queue, state, words, starts[k], lengths[k], 0, True):
+        if not _scan(table, parent, stack, queue, state, log, words, starts[k], lengths[k], k, 0, True):
             return False
     return True
 

@@ -36,6 +36,10 @@ def hunt(presentation: Presentation, *, effort: int = 5, seconds: float | None =
     return _Hunt(presentation, plan_for(effort), seconds, listen).verdict()
 
 
+LARGEST_FITTING = 400
+"""In a finite group the descent is not followed beyond this index; cyclic subgroups give shorter witnesses there."""
+
+
 class _Hunt:
     def __init__(self, presentation: Presentation, plan: Plan, seconds: float | None, listen: Listener) -> None:
         self.presentation = presentation
@@ -77,13 +81,17 @@ class _Hunt:
         if table is None:
             return
         self.searched["order"] = table.index
-        self._try(descend(self.whole, reach=min(table.index, 400), budget=self.budget.part(self.budget.left // 3)), "descent")
+        reach = min(table.index, LARGEST_FITTING)
+        self._try(descend(self.whole, reach=reach, budget=self.budget.part(self.budget.left // 3)), "descent", table.index)
         if self.found is None:
-            self._try(cyclic_visits(self.whole, table, self.budget.part(self.budget.left // 2)), "finite")
+            self._try(cyclic_visits(self.whole, table, self.budget.part(self.budget.left // 2)), "finite", table.index)
 
-    def _try(self, visits: Iterable[tuple[Visit, Budget]], lane: str) -> None:
-        """Try to prove the subgroups of a lane nilpotent, one after the other, until one is."""
+    def _try(self, visits: Iterable[tuple[Visit, Budget]], lane: str, order: int | None = None) -> None:
+        """Try to prove the subgroups of a lane nilpotent, one after the other, until one is. In a finite group of known order those
+        whose nilpotent quotient is too small are passed over."""
         for visit, budget in visits:
+            if order is not None and visit.quotient(visit.max_class).order != order // visit.index:
+                continue
             self.searched["subgroups"] += 1
             self.listen(Event(lane, f"index {visit.index}: {visit.how}", visit.index))
             proof = visit.proof(budget)

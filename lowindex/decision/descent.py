@@ -16,8 +16,8 @@ from lowindex.quotients import Cut, induced_cuts, layer_cuts, permutation_cut, t
 from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation
 
-QUICK_PROOF = 8
-"""A first proof may take one part in this many of what is left; the last one takes everything."""
+QUICK_PROOF = 400_000
+"""Work of a first attempt at a proof; the last one, when no quotient says otherwise, may take everything."""
 
 QUICK_CLASS = 4
 """The class up to which the nilpotent quotient is computed before other quotients are looked for."""
@@ -31,7 +31,7 @@ def descend(start: Visit, *, reach: int, budget: Budget) -> Iterator[tuple[Visit
     while not budget.exhausted:
         cut = twisted_characters(visit.rank, visit.relators, visit.homology, budget=budget)
         if cut is None and visit.quotient(QUICK_CLASS).stable:
-            yield visit, budget.part(budget.left // QUICK_PROOF)
+            yield visit, budget.part(QUICK_PROOF)
         cut = cut or next(layer_cuts(visit.rank, visit.relators, budget=budget.part(budget.left // 4)), None)
         cut = cut or next(induced_cuts(visit.rank, visit.relators, budget=budget.part(budget.left // 3)), None)
         cut = cut or first_permutation_cut(visit, budget.part(budget.left // 3))

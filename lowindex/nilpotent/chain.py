@@ -18,11 +18,13 @@ from dataclasses import dataclass
 
 from lowindex.budget import Budget
 from lowindex.nilpotent.collection import NilpotentPresentation, Vector
+from lowindex.nilpotent.enumerated import finite_replay
 from lowindex.nilpotent.lattice import close_conjugations
 from lowindex.nilpotent.quotient import NilpotentQuotient, nilpotent_quotient
 from lowindex.rewriting import (
     Completion,
     Derivation,
+    Factor,
     Order,
     Proof,
     RecursivePath,
@@ -31,8 +33,11 @@ from lowindex.rewriting import (
     WeightedShortlex,
     eliminate_short,
     encoded,
+    letter_of,
     propagate,
     simplify,
+    solved,
+    substituted,
 )
 from lowindex.words import Word, commutator, inverse, product
 
@@ -41,6 +46,9 @@ Goal = tuple[str, int, int]
 
 MANY = 80
 """With more generators than this left, a presentation is cut down further before its nilpotent quotient is computed."""
+
+LARGEST_ENUMERATED = 5000
+"""Up to this order a coset enumeration over the trivial subgroup may serve as proof."""
 
 FIRST_SHARE = 60_000
 """Work of one attempt at a proof in the first round; later rounds have four times as much each."""
@@ -229,8 +237,42 @@ class _Attempt:
             again = self.run(order, longest, [n for n in seeds if n in used], budget.part(2 * part.spent + 1000))
             if again is not None:
                 proof = min(proof, self.reduced.derivation.cut(again), key=lambda found: found.symbols)
-            return ChainProof(self.quotient, self.symbols, self.definitions, self.images, tuple(self.goals), proof)
+            return self._proof(proof)
+        if self.quotient.order is not None and self.quotient.order <= LARGEST_ENUMERATED:
+            known = len(self.reduced.derivation.words)
+            goals = self.by_enumeration(share, budget.part(2 * share))
+            if goals is not None:
+                return self._proof(self.reduced.derivation.cut(goals))
+            self.reduced.derivation.forget_from(known)
         return None
+
+    def _proof(self, proof: Proof) -> ChainProof:
+        return ChainProof(self.quotient, self.symbols, self.definitions, self.images, tuple(self.goals), proof)
+
+    def by_enumeration(self, max_cosets: int, budget: Budget) -> list[int] | None:
+        """For a finite quotient: a coset enumeration over 1 that closes with its order proves every goal."""
+        reduced = self.reduced
+        assert self.quotient.order is not None
+        replay = finite_replay(reduced, self.quotient.order, max_cosets=max_cosets, budget=budget)
+        if replay is None:
+            return None
+        words = reduced.derivation.words
+        rules = dict(reduced.single)
+        for number, symbol in zip(self.given, range(self.rank + 1, self.rank + 1 + len(self.given)), strict=True):
+            for letter in (letter_of(symbol), letter_of(-symbol)):
+                rules[letter] = solved(words[number], number, letter)
+        numbers: list[int] = []
+        for word in self.goals.values():
+            factors: list[Factor] = []
+            goal = encoded(word)
+            plain = substituted(goal, rules, reduced.rules, factors)
+            proved = replay.prove(plain)
+            if proved is None:
+                return None
+            if plain:
+                factors.append(Factor("", proved, 1))
+            numbers.append(reduced.derivation.derive(goal, factors))
+        return numbers
 
     def run(self, order: Order, longest: int, seeds: Sequence[int], budget: Budget) -> list[int] | None:
         """One completion: first what concerns living generators and the chain, then the eliminated generators. The numbers of the
@@ -247,7 +289,7 @@ class _Attempt:
         system.set_goals({goal: word for goal, word in self.goals.items() if goal not in late}, {})
         if not system.run(work=budget.left):
             return None
-        system.set_goals({goal: self.goals[goal] for goal in late}, {goal: g for goal, g in late.items()})
+        system.set_goals({goal: self.goals[goal] for goal in late}, {**late})
         if not system.run(work=budget.left):
             return None
         return [system.proved[goal] for goal in self.goals]

@@ -3,10 +3,10 @@
 from lowindex.rewriting.completion import Completion
 from lowindex.rewriting.derivation import Derivation, Factor, Lemma, Proof
 from lowindex.rewriting.order import Order, RecursivePath, Shortlex, WeightedShortlex
-from lowindex.rewriting.relators import RelatorSet
+from lowindex.rewriting.relators import RelatorSet, solved, substituted
 from lowindex.rewriting.rules import Rule, RuleSet
 from lowindex.rewriting.simplify import eliminate_short, propagate, simplify
-from lowindex.rewriting.strings import encoded
+from lowindex.rewriting.strings import encoded, letter_of
 
 __all__ = [
     "Completion",
@@ -23,6 +23,9 @@ __all__ = [
     "WeightedShortlex",
     "eliminate_short",
     "encoded",
+    "letter_of",
     "propagate",
     "simplify",
+    "solved",
+    "substituted",
 ]

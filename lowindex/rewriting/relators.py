@@ -211,20 +211,10 @@ class RelatorSet:
 
     def substituted(self, word: str, prefix: str, factors: list[Factor]) -> str:
         """The word with eliminated letters replaced until none is left, logged."""
-        single = self.single
-        while True:
-            if single.keys().isdisjoint(word):
-                return word
-            done = ""
-            for letter in word:
-                rule = single.get(letter)
-                if rule is None:
-                    done = joined(done, letter)
-                    continue
-                self.rules.log(rule, joined(prefix, done), factors)
-                done = joined(done, rule.rhs)
-            word = self.blocks.sorted_logged(done, prefix, factors)
+        while not self.single.keys().isdisjoint(word):
+            word = self.blocks.sorted_logged(replaced(word, self.single, self.rules, prefix, factors), prefix, factors)
             self.budget.spend(1 + len(word))
+        return word
 
     def cheapest(
         self, keep: Collection[int], *, growth: int, longest: int, weight: Mapping[int, int] | None = None
@@ -258,6 +248,26 @@ class RelatorSet:
             if k != equation
         )
         return times * (length - 2)
+
+
+def replaced(word: str, single: Mapping[str, Rule], rules: RuleSet, prefix: str, factors: list[Factor]) -> str:
+    """The word with every letter that has a rule replaced once, logged behind `prefix`."""
+    done = ""
+    for letter in word:
+        rule = single.get(letter)
+        if rule is None:
+            done = joined(done, letter)
+        else:
+            rules.log(rule, joined(prefix, done), factors)
+            done = joined(done, rule.rhs)
+    return done
+
+
+def substituted(word: str, single: Mapping[str, Rule], rules: RuleSet, factors: list[Factor]) -> str:
+    """The word with letters replaced until no letter has a rule, logged."""
+    while not single.keys().isdisjoint(word):
+        word = replaced(word, single, rules, "", factors)
+    return word
 
 
 def occurs_once(word: str, generator: int) -> bool:
