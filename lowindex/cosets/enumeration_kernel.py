@@ -17,7 +17,8 @@ from numba import njit
 
 # Places in `state`, written as literals below because numba's cache does not see changes of globals:
 # 0 USED cosets numbered, 1 LIVE, 2 TOP of stack, 3 ROW and 4 COLUMN of the next slot to look at,
-# 5 STEPS done in this slice, 6 OVERFLOW of the stack (1: some deductions were dropped), 7 PEAK of live cosets, 8 RELATOR, 9 LOGGED entries of the log
+# 5 STEPS done in this slice, 6 OVERFLOW of the stack (1: some deductions were dropped), 7 PEAK of live cosets, 8 RELATOR to trace next,
+# 9 LOGGED entries of the log
 
 
 @njit(cache=True, nogil=True)

@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 import time
-from collections.abc import Iterable
+from collections.abc import Iterable, Iterator
+from contextlib import suppress
 from typing import Any
 
 import lowindex
@@ -18,6 +19,7 @@ from lowindex.decision.verdict import UNDECIDED, YES, Verdict
 from lowindex.decision.visit import Visit
 from lowindex.events import Event, Listener, silent
 from lowindex.nilpotent import ChainProof
+from lowindex.rewriting import Unfinished
 from lowindex.witness import Witness, virtually_nilpotent
 from lowindex.words import Presentation, Word
 
@@ -47,7 +49,7 @@ class _Hunt:
         self.listen = listen
         self.began = time.monotonic()
         self.budget = Budget(plan.work, seconds=seconds)
-        self.searched: dict[str, Any] = {"subgroups": 0}
+        self.searched: dict[str, Any] = {"subgroups": 0, "complete_to_index": 1}
         self.found: tuple[Visit, ChainProof, Witness] | None = None
         self.open_at: int | None = None
         whole = CosetTable.from_permutations([[0]] * presentation.rank)
@@ -89,7 +91,7 @@ class _Hunt:
     def _try(self, visits: Iterable[tuple[Visit, Budget]], lane: str, order: int | None = None) -> None:
         """Try to prove the subgroups of a lane nilpotent, one after the other, until one is. In a finite group of known order those
         whose nilpotent quotient is too small are passed over."""
-        for visit, budget in visits:
+        for visit, budget in _while_finished(visits):
             if order is not None and visit.quotient(visit.max_class).order != order // visit.index:
                 continue
             self.searched["subgroups"] += 1
@@ -146,6 +148,12 @@ class _Hunt:
             lowindex.__version__,
             open_at=self.open_at,
         )
+
+
+def _while_finished(visits: Iterable[tuple[Visit, Budget]]) -> Iterator[tuple[Visit, Budget]]:
+    """The visits of a lane, which ends when a presentation cannot be reduced within the budget."""
+    with suppress(Unfinished):
+        yield from visits
 
 
 def _reason(summary: dict[str, Any], visit: Visit) -> str:

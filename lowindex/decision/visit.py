@@ -37,6 +37,7 @@ class Visit:
     @cached_property
     def subgroup(self) -> SubgroupPresentation:
         """H on its Schreier generators."""
+        self.budget.spend(self.index * sum(map(len, self.presentation.relators)) // 10)
         return subgroup_presentation(self.presentation, self.table)
 
     @cached_property

@@ -13,7 +13,7 @@ C. C. Sims, Verifying nilpotence, J. Symbolic Computation 3 (1987) 231-247.
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Callable, Hashable, Iterator, Sequence
 from dataclasses import dataclass
 
 from lowindex.budget import Budget
@@ -30,6 +30,7 @@ from lowindex.rewriting import (
     RecursivePath,
     RelatorSet,
     Shortlex,
+    Unfinished,
     WeightedShortlex,
     eliminate_short,
     encoded,
@@ -49,6 +50,9 @@ MANY = 80
 
 LARGEST_ENUMERATED = 5000
 """Up to this order a coset enumeration over the trivial subgroup may serve as proof."""
+
+MOST_HELPERS = 15
+"""Symbols defined beside the chain at most."""
 
 FIRST_SHARE = 60_000
 """Work of one attempt at a proof in the first round; later rounds have four times as much each."""
@@ -79,15 +83,15 @@ def prove_nilpotent(rank: int, relators: Sequence[Word], *, max_class: int, budg
     relators and several orderings take turns with growing shares of the budget.
     """
     attempts: list[_Attempt] = []
-    for prepare in (_guided, _eliminated, _as_given):
-        attempt = _Attempt.made(rank, relators, prepare, max_class, budget)
+    for prepare, helpers in WAYS:
+        attempt = _Attempt.made(rank, relators, prepare, max_class, budget, helpers=helpers)
         if attempt is None:
-            return None
+            continue
         attempts.append(attempt)
         if proof := attempt.try_all(budget, FIRST_SHARE):
             return proof
     share = 4 * FIRST_SHARE
-    while not budget.exhausted:
+    while attempts and not budget.exhausted:
         for attempt in attempts:
             if proof := attempt.try_all(budget, share):
                 return proof
@@ -151,6 +155,10 @@ def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget)
     return reduced
 
 
+WAYS = ((_guided, False), (_eliminated, False), (_eliminated, True), (_as_given, False), (_as_given, True))
+"""How relators are prepared, and whether helpers are defined; in the order in which they are tried."""
+
+
 class _Attempt:
     """What to prove for one prepared presentation and its nilpotent quotient, and the portfolio of orderings to prove it by."""
 
@@ -162,25 +170,44 @@ class _Attempt:
         prepare: Callable[[int, Sequence[Word], int, Budget], RelatorSet],
         max_class: int,
         budget: Budget,
+        *,
+        helpers: bool = False,
     ) -> _Attempt | None:
-        """Prepare the relators; None when the nilpotent quotient does not become stable."""
-        reduced = prepare(rank, relators, max_class, budget)
-        living = sorted(reduced.alive)
-        quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living[::-1])
-        return cls(rank, reduced, living, quotient) if quotient.stable else None
+        """Prepare the relators; None when that grows too much or the nilpotent quotient does not become stable."""
+        try:
+            reduced = prepare(rank, relators, max_class, budget)
+            living = sorted(reduced.alive)
+            quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living[::-1])
+        except Unfinished:
+            return None
+        return cls(rank, reduced, living, quotient, helpers=helpers) if quotient.stable else None
 
-    def __init__(self, rank: int, reduced: RelatorSet, living: Sequence[int], quotient: NilpotentQuotient) -> None:
+    def __init__(
+        self, rank: int, reduced: RelatorSet, living: Sequence[int], quotient: NilpotentQuotient, *, helpers: bool
+    ) -> None:
         self.rank = rank
         self.reduced = reduced
         self.living = living
         self.quotient = quotient
         self.group = group = quotient.group
         self.symbols, self.definitions = _symbols(rank, living, group)
+        self.helpers: list[int] = []
+        if helpers:
+            self._define_helpers()
         self.given = [
             reduced.derivation.give(encoded(product((-(rank + k),), word))) for k, word in enumerate(self.definitions, 1)
         ]
         self.images = self._images()
         self.goals = self._goals()
+
+    def _define_helpers(self) -> None:
+        """Symbols for the commutators that are trivial in N but whose weight is one more than its class: completion collects with them
+        before it finds that they are trivial."""
+        weights, top = self.group.weights, self.quotient.nilpotency_class + 1
+        for j, i in conjugate_pairs(self.group):
+            if weights[j] + weights[i] == top and len(self.helpers) < MOST_HELPERS:
+                self.definitions += (commutator((self.symbols[j],), (self.symbols[i],)),)
+                self.helpers.append(self.rank + len(self.definitions))
 
     def _images(self) -> tuple[Vector, ...]:
         """The image in N of every generator: from the quotient for the living, by their solutions for the eliminated."""
@@ -215,6 +242,9 @@ class _Attempt:
         chain = list(self.symbols)
         others = [g for g in self.living if g not in set(chain)]
         weight = dict(zip(chain, self.group.weights, strict=True)) | dict.fromkeys(others, 1)
+        if self.helpers:
+            yield RecursivePath(self.helpers[::-1] + chain[::-1] + others), 60
+            return
         if self.quotient.nilpotency_class > 1:
             yield RecursivePath(chain[::-1] + others), 60
         yield Shortlex(chain + others), 12
@@ -222,6 +252,13 @@ class _Attempt:
             yield WeightedShortlex(chain + others, weight), 12
 
     def try_all(self, budget: Budget, share: int) -> ChainProof | None:
+        """As `_try_all`; None, too, when words grew too long."""
+        try:
+            return self._try_all(budget, share)
+        except Unfinished:
+            return None
+
+    def _try_all(self, budget: Budget, share: int) -> ChainProof | None:
         """Each ordering once, with this share of the budget; the shorter of the proof found and of one that starts from the relators it
         used."""
         seeds = [*self.reduced.active, *self.given]
@@ -278,9 +315,9 @@ class _Attempt:
         """One completion: first what concerns living generators and the chain, then the eliminated generators. The numbers of the
         equations that prove the goals, None when some stayed open."""
         reduced = self.reduced
-        system = Completion(reduced.derivation, order, {*self.living, *self.symbols}, budget=budget)
+        system = Completion(reduced.derivation, order, {*self.living, *self.symbols, *self.helpers}, budget=budget)
         system.single = dict(reduced.single)
-        system.keep = set(self.symbols)
+        system.keep = {*self.symbols, *self.helpers}
         system.longest_solution = longest
         for number in seeds:
             system.insert(number, priority=len(reduced.derivation.words[number]) // 2)
@@ -289,7 +326,7 @@ class _Attempt:
         system.set_goals({goal: word for goal, word in self.goals.items() if goal not in late}, {})
         if not system.run(work=budget.left):
             return None
-        system.set_goals({goal: self.goals[goal] for goal in late}, {**late})
+        system.set_goals({goal: self.goals[goal] for goal in late}, dict[Hashable, int]((*late.items(),)))
         if not system.run(work=budget.left):
             return None
         return [system.proved[goal] for goal in self.goals]

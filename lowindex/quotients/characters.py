@@ -25,7 +25,7 @@ ORDERS = (2, 3, 4, 5, 6, 8, 7, 9, 10, 12)
 PER_ORDER = 300
 """Characters tried for one order."""
 
-LARGEST_CUT = 4000
+LARGEST_CUT = 500
 """The intersection of kernels is not taken beyond this index."""
 
 
@@ -101,7 +101,9 @@ def _intersected(hits: list[tuple[int, tuple[int, ...]]], used: list[tuple[int, 
     for hit in hits:
         trial = [*kept, hit]
         table = abelian_table(list(zip(*(values for _, values in trial), strict=True)), [m for m, _ in trial], LARGEST_CUT)
-        if table is not None and (best is None or table.index > best.index):
+        if table is None:
+            break
+        if best is None or table.index > best.index:
             kept, best = trial, table
     assert best is not None
     quotients = ", ".join(f"F_{q} x| C{m}" for m, q in used)

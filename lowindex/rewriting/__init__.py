@@ -3,7 +3,7 @@
 from lowindex.rewriting.completion import Completion
 from lowindex.rewriting.derivation import Derivation, Factor, Lemma, Proof
 from lowindex.rewriting.order import Order, RecursivePath, Shortlex, WeightedShortlex
-from lowindex.rewriting.relators import RelatorSet, solved, substituted
+from lowindex.rewriting.relators import RelatorSet, Unfinished, solved, substituted
 from lowindex.rewriting.rules import Rule, RuleSet
 from lowindex.rewriting.simplify import eliminate_short, propagate, simplify
 from lowindex.rewriting.strings import encoded, letter_of
@@ -20,6 +20,7 @@ __all__ = [
     "Rule",
     "RuleSet",
     "Shortlex",
+    "Unfinished",
     "WeightedShortlex",
     "eliminate_short",
     "encoded",

@@ -18,8 +18,15 @@ from lowindex.rewriting.rules import Rule, RuleSet
 from lowindex.rewriting.strings import cyclic_ends, decoded, generator_of, inverted, joined, letter_of
 from lowindex.words import Word, inverse, reduced
 
+LONGEST_WORD = 20_000
+"""Words that would grow beyond this length end the work on a set of relators."""
+
 ROUNDS = 60
 """How often one relator is rotated and rewritten before it is taken as it is."""
+
+
+class Unfinished(Exception):
+    """A set of relators could not be reduced within its budget, or words grew too long: it must not be used as a presentation."""
 
 
 class RelatorSet:
@@ -173,7 +180,10 @@ class RelatorSet:
         ]
 
     def renumbered_words(self) -> list[Word]:
-        """The relators in force, in the living generators numbered 1, 2, ... in increasing order."""
+        """The relators in force, in the living generators numbered 1, 2, ... in increasing order. Unfinished when some are still
+        waiting on the queue."""
+        if self.queue:
+            raise Unfinished("the budget was spent before all relators were reduced")
         place = self._places()
         return [tuple([place[x] for x in decoded(word)]) for word in self.active.values()]
 
@@ -260,6 +270,8 @@ def replaced(word: str, single: Mapping[str, Rule], rules: RuleSet, prefix: str,
         else:
             rules.log(rule, joined(prefix, done), factors)
             done = joined(done, rule.rhs)
+        if len(done) > LONGEST_WORD:
+            raise Unfinished(f"a word of more than {LONGEST_WORD} letters")
     return done
 
 

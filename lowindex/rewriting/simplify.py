@@ -103,6 +103,10 @@ def propagate(relators: RelatorSet, basis: Collection[int], weight: Mapping[int,
         if number not in current or not unknown:
             continue
         word = relators.derivation.words[number]
+        if not relators.single.keys().isdisjoint(word):
+            current.discard(number)
+            put(number)
+            continue
         others = sorted({generator_of(c) for c in word}.difference(basis), key=lambda g: (weight[g], g))
         if not others or unsolved(word) != unknown:
             continue
