@@ -20,6 +20,7 @@ _ROOMS = {
     "SubgroupSearch": "search",
     "subgroups": "search",
     "count_classes": "search",
+    "homomorphisms": "quotients",
     "Verdict": "decision",
     "hunt": "decision",
     "Witness": "witness",

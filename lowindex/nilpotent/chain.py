@@ -51,9 +51,6 @@ MANY = 80
 LARGEST_ENUMERATED = 5000
 """Up to this order a coset enumeration over the trivial subgroup may serve as proof."""
 
-MOST_HELPERS = 15
-"""Symbols defined beside the chain at most."""
-
 FIRST_SHARE = 60_000
 """Work of one attempt at a proof in the first round; later rounds have four times as much each."""
 
@@ -83,8 +80,8 @@ def prove_nilpotent(rank: int, relators: Sequence[Word], *, max_class: int, budg
     relators and several orderings take turns with growing shares of the budget.
     """
     attempts: list[_Attempt] = []
-    for prepare, helpers in WAYS:
-        attempt = _Attempt.made(rank, relators, prepare, max_class, budget, helpers=helpers)
+    for prepare in (_guided, _eliminated, _as_given):
+        attempt = _Attempt.made(rank, relators, prepare, max_class, budget)
         if attempt is None:
             continue
         attempts.append(attempt)
@@ -101,7 +98,7 @@ def prove_nilpotent(rank: int, relators: Sequence[Word], *, max_class: int, budg
 
 def simplified_relators(rank: int, relators: Sequence[Word], *, budget: Budget) -> RelatorSet:
     """The relators after Tietze moves; equation k of the log is relators[k]."""
-    reduced = _as_given(rank, relators, 1, budget)
+    reduced = _merged(rank, relators, budget)
     simplify(reduced)
     return reduced
 
@@ -116,8 +113,8 @@ def quotient_of(
     return nilpotent_quotient(len(place), words, max_class=max_class, budget=budget, prefer=first)
 
 
-def _as_given(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> RelatorSet:
-    """Only generators that are trivial or equal to others are eliminated; long lists are cut down further."""
+def _merged(rank: int, relators: Sequence[Word], budget: Budget) -> RelatorSet:
+    """Only generators that are trivial or equal to others are eliminated; long lists are cut down further. All relators are on the queue."""
     generators = range(1, rank + 1)
     reduced = RelatorSet(Derivation(relators), Shortlex(generators), generators, budget=budget)
     for number in {word: n for n, word in enumerate(relators) if word}.values():
@@ -125,6 +122,12 @@ def _as_given(rank: int, relators: Sequence[Word], max_class: int, budget: Budge
     eliminate_short(reduced, most=2)
     if len(reduced.alive) > MANY:
         eliminate_short(reduced, most=3)
+    return reduced
+
+
+def _as_given(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> RelatorSet:
+    """As `_merged`, and relators are shortened by each other."""
+    reduced = _merged(rank, relators, budget)
     reduced.settle()
     return reduced
 
@@ -136,7 +139,7 @@ def _eliminated(rank: int, relators: Sequence[Word], max_class: int, budget: Bud
 
 def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> RelatorSet:
     """The nilpotent quotient says which generators to keep and how heavy the others are; the others are solved in terms of them."""
-    reduced = _as_given(rank, relators, max_class, budget)
+    reduced = _merged(rank, relators, budget)
     if len(reduced.alive) > MANY:
         simplify(reduced)
     living = sorted(reduced.alive)
@@ -147,16 +150,15 @@ def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget)
         for g, image in zip(living, quotient.images, strict=True)
     }
     basis = [living[definition[1] - 1] for definition in group.definitions if definition[0] == "generator"]
+    for k in range(len(basis), group.size):
+        unit = group.generator(k)
+        basis += [g for g, image in zip(living, quotient.images, strict=True) if image == unit][:1]
     propagate(reduced, basis, weight)
     reduced.settle()
     simplify(reduced, basis, weight=weight)
     while close_conjugations(reduced, reduced.alive) and not budget.exhausted:
         pass
     return reduced
-
-
-WAYS = ((_guided, False), (_eliminated, False), (_eliminated, True), (_as_given, False), (_as_given, True))
-"""How relators are prepared, and whether helpers are defined; in the order in which they are tried."""
 
 
 class _Attempt:
@@ -170,8 +172,6 @@ class _Attempt:
         prepare: Callable[[int, Sequence[Word], int, Budget], RelatorSet],
         max_class: int,
         budget: Budget,
-        *,
-        helpers: bool = False,
     ) -> _Attempt | None:
         """Prepare the relators; None when that grows too much or the nilpotent quotient does not become stable."""
         try:
@@ -180,34 +180,20 @@ class _Attempt:
             quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living[::-1])
         except Unfinished:
             return None
-        return cls(rank, reduced, living, quotient, helpers=helpers) if quotient.stable else None
+        return cls(rank, reduced, living, quotient) if quotient.stable else None
 
-    def __init__(
-        self, rank: int, reduced: RelatorSet, living: Sequence[int], quotient: NilpotentQuotient, *, helpers: bool
-    ) -> None:
+    def __init__(self, rank: int, reduced: RelatorSet, living: Sequence[int], quotient: NilpotentQuotient) -> None:
         self.rank = rank
         self.reduced = reduced
         self.living = living
         self.quotient = quotient
         self.group = group = quotient.group
         self.symbols, self.definitions = _symbols(rank, living, group)
-        self.helpers: list[int] = []
-        if helpers:
-            self._define_helpers()
         self.given = [
             reduced.derivation.give(encoded(product((-(rank + k),), word))) for k, word in enumerate(self.definitions, 1)
         ]
         self.images = self._images()
         self.goals = self._goals()
-
-    def _define_helpers(self) -> None:
-        """Symbols for the commutators that are trivial in N but whose weight is one more than its class: completion collects with them
-        before it finds that they are trivial."""
-        weights, top = self.group.weights, self.quotient.nilpotency_class + 1
-        for j, i in conjugate_pairs(self.group):
-            if weights[j] + weights[i] == top and len(self.helpers) < MOST_HELPERS:
-                self.definitions += (commutator((self.symbols[j],), (self.symbols[i],)),)
-                self.helpers.append(self.rank + len(self.definitions))
 
     def _images(self) -> tuple[Vector, ...]:
         """The image in N of every generator: from the quotient for the living, by their solutions for the eliminated."""
@@ -242,9 +228,6 @@ class _Attempt:
         chain = list(self.symbols)
         others = [g for g in self.living if g not in set(chain)]
         weight = dict(zip(chain, self.group.weights, strict=True)) | dict.fromkeys(others, 1)
-        if self.helpers:
-            yield RecursivePath(self.helpers[::-1] + chain[::-1] + others), 60
-            return
         if self.quotient.nilpotency_class > 1:
             yield RecursivePath(chain[::-1] + others), 60
         yield Shortlex(chain + others), 12
@@ -315,9 +298,9 @@ class _Attempt:
         """One completion: first what concerns living generators and the chain, then the eliminated generators. The numbers of the
         equations that prove the goals, None when some stayed open."""
         reduced = self.reduced
-        system = Completion(reduced.derivation, order, {*self.living, *self.symbols, *self.helpers}, budget=budget)
+        system = Completion(reduced.derivation, order, {*self.living, *self.symbols}, budget=budget)
         system.single = dict(reduced.single)
-        system.keep = {*self.symbols, *self.helpers}
+        system.keep = set(self.symbols)
         system.longest_solution = longest
         for number in seeds:
             system.insert(number, priority=len(reduced.derivation.words[number]) // 2)

@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import heapq
 from collections.abc import Collection, Iterable, Mapping
+from itertools import groupby
 
 from lowindex.budget import Budget
 from lowindex.rewriting.blocks import Blocks
@@ -46,6 +47,7 @@ class RelatorSet:
         self.occurrences: dict[int, set[int]] = {g: set() for g in self.alive}
         self.queue: list[tuple[int, int]] = []
         self.retired: list[Rule] = []
+        self._power_rules: dict[tuple[str, int, int], Rule] = {}
         self.keep: Collection[int] = self.alive
         self.longest_solution = 1
 
@@ -180,12 +182,13 @@ class RelatorSet:
         ]
 
     def renumbered_words(self) -> list[Word]:
-        """The relators in force, in the living generators numbered 1, 2, ... in increasing order. Unfinished when some are still
-        waiting on the queue."""
-        if self.queue:
+        """The relators in force, in the living generators numbered 1, 2, ... in increasing order. Unfinished when the budget is spent and
+        some are still waiting on the queue."""
+        if self.queue and self.budget.exhausted:
             raise Unfinished("the budget was spent before all relators were reduced")
         place = self._places()
-        return [tuple([place[x] for x in decoded(word)]) for word in self.active.values()]
+        waiting = [self.derivation.words[number] for _, number in self.queue]
+        return [tuple([place[x] for x in decoded(word)]) for word in (*self.active.values(), *waiting)]
 
     def renumbered_images(self, rank: int) -> list[Word]:
         """Each of the generators 1..rank as a word in the living ones, these numbered as in `renumbered_words`."""
@@ -222,9 +225,40 @@ class RelatorSet:
     def substituted(self, word: str, prefix: str, factors: list[Factor]) -> str:
         """The word with eliminated letters replaced until none is left, logged."""
         while not self.single.keys().isdisjoint(word):
-            word = self.blocks.sorted_logged(replaced(word, self.single, self.rules, prefix, factors), prefix, factors)
+            done = ""
+            for letter, group in groupby(word):
+                count = len(list(group))
+                if letter in self.single:
+                    rule = self._power_rule(self.single[letter], count)
+                    self.rules.log(rule, joined(prefix, done), factors)
+                    done = joined(done, rule.rhs)
+                else:
+                    done = joined(done, letter * count)
+                if len(done) > LONGEST_WORD:
+                    raise Unfinished(f"a word of more than {LONGEST_WORD} letters")
+            word = self.blocks.sorted_logged(done, prefix, factors)
             self.budget.spend(1 + len(word))
         return word
+
+    def _power_rule(self, rule: Rule, count: int) -> Rule:
+        """letter^count -> sorted word, by doubling."""
+        if count == 1:
+            return rule
+        key = rule.lhs, count, rule.equation
+        if key not in self._power_rules:
+            half = self._power_rule(rule, count // 2)
+            rest = self._power_rule(rule, count - count // 2)
+            factors: list[Factor] = []
+            self.rules.log(half, "", factors)
+            self.rules.log(rest, half.rhs, factors)
+            word = joined(half.rhs, rest.rhs)
+            if len(word) > LONGEST_WORD:
+                raise Unfinished(f"a word of more than {LONGEST_WORD} letters")
+            word = self.blocks.sorted_logged(word, "", factors)
+            lhs = rule.lhs * count
+            equation = self.derivation.derive(lhs + inverted(word), factors)
+            self._power_rules[key] = Rule(lhs, word, equation, 0, 1)
+        return self._power_rules[key]
 
     def cheapest(
         self, keep: Collection[int], *, growth: int, longest: int, weight: Mapping[int, int] | None = None

@@ -79,7 +79,7 @@ def propagate(relators: RelatorSet, basis: Collection[int], weight: Mapping[int,
         if not word or number in current or number in relators.active:
             return
         unknown = unsolved(word)
-        if not unknown and len(word) <= 4:
+        if not unknown and len(word) <= 5:
             relators.take(number)
             return
         current.add(number)
@@ -95,7 +95,7 @@ def propagate(relators: RelatorSet, basis: Collection[int], weight: Mapping[int,
     while relators.queue:
         put(heapq.heappop(relators.queue)[1])
     for number in sorted(relators.active):
-        if unsolved(relators.active[number]) or len(relators.active[number]) > 4:
+        if unsolved(relators.active[number]) or len(relators.active[number]) > 5:
             relators.retire(number)
             put(number)
     while heap and not relators.budget.exhausted:
