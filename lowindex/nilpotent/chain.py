@@ -114,7 +114,8 @@ def quotient_of(
 
 
 def _merged(rank: int, relators: Sequence[Word], budget: Budget) -> RelatorSet:
-    """Only generators that are trivial or equal to others are eliminated; long lists are cut down further. All relators are on the queue."""
+    """Only generators that are trivial or equal to others are eliminated; long lists are cut down further. All relators are on the
+    queue."""
     generators = range(1, rank + 1)
     reduced = RelatorSet(Derivation(relators), Shortlex(generators), generators, budget=budget)
     for number in {word: n for n, word in enumerate(relators) if word}.values():

@@ -1,7 +1,8 @@
 """|Hom(G, S_n)| from the numbers of subgroups.
 
-sum over n of |Hom(G, S_n)| z^n / n!  =  exp( sum over n of a_n z^n / n ),  a_n the number of subgroups of index n (R. P. Stanley, Enumerative
-Combinatorics 2, 1999, ex. 5.13): a transitive homomorphism is a subgroup with its cosets numbered, any other is a union of such.
+sum over n of |Hom(G, S_n)| z^n / n!  =  exp( sum over n of a_n z^n / n ),  a_n the number of subgroups of index n (R. P. Stanley,
+Enumerative Combinatorics 2, 1999, ex. 5.13): a transitive homomorphism is a subgroup with its cosets numbered, any other is a union
+of such.
 """
 
 from __future__ import annotations

@@ -45,7 +45,7 @@ class Blocks:
     def learn(self, word: str, equation: int) -> None:
         """Note a relator if it is the commutator of two generators, or such a commutator times a power of a third."""
         for swap in _readings(word, equation):
-            x, y = swap.direct
+            x, y = swap.direct[0], swap.direct[1]
             self._swaps.setdefault(x + y, swap)
             opposite = swap._replace(exponent=-swap.exponent)
             self._swaps.setdefault(INVERSE_LETTER[x] + y, opposite)
@@ -175,7 +175,7 @@ class Blocks:
 
     def _turned(self, swap: Swap, x: str, y: str) -> list[Factor]:
         """W(x, y) from W of the direct pair, x or y or both being inverted."""
-        a, b = swap.direct
+        a, b = swap.direct[0], swap.direct[1]
         direct = self._lemma(a, 1, b, 1)
         tail = self._z(swap, -1)
         if x == a:

@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from flint import fmpz_mat
-from hypothesis import given, strategies as st
+from hypothesis import given
+from hypothesis import strategies as st
 
 from lowindex.algebra import abelianization, jacobian_mod, mod_p_rank, relation_matrix
 from lowindex.words import product

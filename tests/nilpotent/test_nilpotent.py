@@ -6,7 +6,8 @@ import numpy as np
 import pytest
 from corpus import nilpotent as corpus
 from flint import fmpz_mat
-from hypothesis import given, settings, strategies as st
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
 from lowindex.budget import Budget
 from lowindex.nilpotent import is_consistent, nilpotent_quotient, prove_nilpotent

@@ -9,7 +9,7 @@ from math import factorial
 
 import pytest
 from corpus import flat, plane
-from sympy import divisor_count, divisor_sigma, npartitions
+from sympy import divisor_count, divisor_sigma, partition
 
 from lowindex.budget import Budget
 from lowindex.quotients import count_homomorphisms
@@ -124,8 +124,8 @@ def _hook_degrees(n: int) -> list[int]:
     from sympy.utilities.iterables import partitions
 
     degrees = []
-    for partition in partitions(n):
-        rows = sorted((part for part, times in partition.items() for _ in range(times)), reverse=True)
+    for shape in partitions(n):
+        rows = sorted((part for part, times in shape.items() for _ in range(times)), reverse=True)
         columns = [sum(1 for row in rows if row > j) for j in range(rows[0])]
         hooks = 1
         for i, row in enumerate(rows):
@@ -154,7 +154,7 @@ def test_homomorphisms_by_product_rule_and_partitions() -> None:
     both = count_homomorphisms(Presentation.parse("⟨a, b | a^2, b^3⟩"), 7, budget=Budget())
     assert both == tuple(x * y for x, y in zip(two, three, strict=True))
     lattice = count_homomorphisms(Presentation.parse("⟨a, b | [a,b]⟩"), 7, budget=Budget())
-    assert lattice == tuple(factorial(n) * int(npartitions(n)) for n in range(8))
+    assert lattice == tuple(factorial(n) * int(partition(n)) for n in range(8))
 
 
 @pytest.mark.slow

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from hypothesis import given, settings, strategies as st
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
 from lowindex.rewriting import Derivation, Factor
 from lowindex.rewriting.blocks import Blocks

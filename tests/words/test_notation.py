@@ -3,9 +3,11 @@
 from __future__ import annotations
 
 import time
+from itertools import pairwise
 
 import pytest
-from hypothesis import given, strategies as st
+from hypothesis import given
+from hypothesis import strategies as st
 
 from lowindex.errors import InputError, NotationError
 from lowindex.words import Presentation, parse_file, reduced
@@ -113,7 +115,7 @@ def test_print_and_read_back(names: list[str], data: st.DataObject) -> None:
 def test_free_reduction_is_a_normal_form(left: list[int], right: list[int]) -> None:
     once = reduced(left)
     assert reduced(once) == once
-    assert all(x != -y for x, y in zip(once, once[1:], strict=False))
+    assert all(x != -y for x, y in pairwise(once))
     assert reduced([*left, *right]) == reduced([*reduced(left), *reduced(right)])
     assert reduced([*left, *(-x for x in reversed(left))]) == ()
 
