@@ -24,6 +24,9 @@ MOST_GENERATORS = 80
 """A quotient that would need more generators is not built: the class before it is returned."""
 
 
+MOST_TAILS = 1500
+
+
 @dataclass(frozen=True)
 class NilpotentQuotient:
     """H / gamma_{c+1}: `group`, the images of the generators of H, and whether it is the largest nilpotent quotient of H (`stable`: the
@@ -163,6 +166,8 @@ def _normalised(value: list[int], orders: list[tuple[int, Vector]]) -> list[int]
 def _next_class(quotient: NilpotentQuotient, relators: Sequence[Word], budget: Budget) -> NilpotentQuotient | None:
     """H / gamma_{c+2} from H / gamma_{c+1}; None when the budget or the number of generators is exceeded."""
     cover = _Cover(quotient)
+    if len(cover.tails) > MOST_TAILS:
+        return None
     rows: dict[tuple[int, ...], None] = {}
     for left, right in consistency_pairs(cover.group, most=cover.weight):
         budget.spend(2 + cover.group.size // 4)
@@ -177,6 +182,7 @@ def _next_class(quotient: NilpotentQuotient, relators: Sequence[Word], budget: B
             rows[value] = None
         if budget.exhausted:
             return None
+    budget.spend(len(rows) * len(cover.tails) // 5)
     return cover.quotient([list(row[cover.size :]) for row in rows])
 
 

@@ -25,6 +25,9 @@ ORDERS = (2, 3, 4, 5, 6, 8, 7, 9, 10, 12)
 PER_ORDER = 300
 """Characters tried for one order."""
 
+MOST_HITS = 40
+"""Characters whose kernels are intersected at most; groups with more of them are usually large."""
+
 LARGEST_CUT = 500
 """The intersection of kernels is not taken beyond this index."""
 
@@ -33,12 +36,13 @@ def twisted_characters(rank: int, relators: Sequence[Word], homology: Abelianiza
     """The intersection of the kernels of all characters that give a quotient F_q^+ x| C_m; None when none is found."""
     hits: list[tuple[int, tuple[int, ...]]] = []
     primes: dict[int, tuple[int, int]] = {}
+    letters = sum(map(len, relators))
     for m in _orders(homology):
         for values in islice(characters(homology, m), PER_ORDER):
-            if budget.exhausted:
+            if budget.exhausted or len(hits) == MOST_HITS:
                 break
             for q in _primes(m):
-                budget.spend(5 + sum(map(len, relators)) // 4 + rank * len(relators) // 20)
+                budget.spend(50 + rank + letters + rank * len(relators) // 5)
                 if has_crossed(rank, relators, values, m, q):
                     hits.append((m, values))
                     primes[m] = m, q
@@ -105,6 +109,8 @@ def _intersected(hits: list[tuple[int, tuple[int, ...]]], used: list[tuple[int, 
             break
         if best is None or table.index > best.index:
             kept, best = trial, table
+        if 2 * best.index > LARGEST_CUT:
+            break
     assert best is not None
     quotients = ", ".join(f"F_{q} x| C{m}" for m, q in used)
     return Cut(best, "characters", f"{len(kept)} characters with quotients {quotients}")
