@@ -32,6 +32,7 @@ from lowindex.rewriting import (
     Shortlex,
     Unfinished,
     WeightedShortlex,
+    abbreviate,
     eliminate_short,
     encoded,
     letter_of,
@@ -53,6 +54,10 @@ LARGEST_ENUMERATED = 5000
 
 FIRST_SHARE = 60_000
 """Work of one attempt at a proof in the first round; later rounds have four times as much each."""
+
+
+_Prepared = tuple[RelatorSet, tuple[Word, ...]]
+"""Relators made ready for proofs, and the words named on the way (symbols behind the generators)."""
 
 
 @dataclass(frozen=True)
@@ -80,7 +85,7 @@ def prove_nilpotent(rank: int, relators: Sequence[Word], *, max_class: int, budg
     relators and several orderings take turns with growing shares of the budget.
     """
     attempts: list[_Attempt] = []
-    for prepare in (_guided, _eliminated, _as_given):
+    for prepare in (_guided, _eliminated, _abbreviated, _as_given):
         attempt = _Attempt.made(rank, relators, prepare, max_class, budget)
         if attempt is None:
             continue
@@ -126,23 +131,40 @@ def _merged(rank: int, relators: Sequence[Word], budget: Budget) -> RelatorSet:
     return reduced
 
 
-def _as_given(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> RelatorSet:
+def _as_given(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
     """As `_merged`, and relators are shortened by each other."""
     reduced = _merged(rank, relators, budget)
     reduced.settle()
-    return reduced
+    return reduced, ()
 
 
-def _eliminated(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> RelatorSet:
+def _eliminated(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
     """Tietze moves without a plan."""
-    return simplified_relators(rank, relators, budget=budget)
+    return simplified_relators(rank, relators, budget=budget), ()
 
 
-def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> RelatorSet:
+def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
     """The nilpotent quotient says which generators to keep and how heavy the others are; the others are solved in terms of them."""
     reduced = _merged(rank, relators, budget)
     if len(reduced.alive) > MANY:
         simplify(reduced)
+    _solve(reduced, max_class, budget)
+    return reduced, ()
+
+
+def _abbreviated(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
+    """As `_guided`, with names for pairs of letters that occur often."""
+    reduced = _merged(rank, relators, budget)
+    if len(reduced.alive) > MANY:
+        simplify(reduced)
+    named = abbreviate(reduced, rank + 1)
+    for number in reduced.derivation.given[len(relators) :]:
+        reduced.insert(number)
+    _solve(reduced, max_class, budget)
+    return reduced, tuple(named)
+
+
+def _solve(reduced: RelatorSet, max_class: int, budget: Budget) -> None:
     living = sorted(reduced.alive)
     quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living)
     group = quotient.group
@@ -159,7 +181,6 @@ def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget)
     simplify(reduced, basis, weight=weight)
     while close_conjugations(reduced, reduced.alive) and not budget.exhausted:
         pass
-    return reduced
 
 
 class _Attempt:
@@ -170,40 +191,40 @@ class _Attempt:
         cls,
         rank: int,
         relators: Sequence[Word],
-        prepare: Callable[[int, Sequence[Word], int, Budget], RelatorSet],
+        prepare: Callable[[int, Sequence[Word], int, Budget], _Prepared],
         max_class: int,
         budget: Budget,
     ) -> _Attempt | None:
         """Prepare the relators; None when that grows too much or the nilpotent quotient does not become stable."""
         try:
-            reduced = prepare(rank, relators, max_class, budget)
+            reduced, named = prepare(rank, relators, max_class, budget)
             living = sorted(reduced.alive)
             quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living[::-1])
         except Unfinished:
             return None
-        return cls(rank, reduced, living, quotient) if quotient.stable else None
+        return cls(rank, reduced, named, quotient) if quotient.stable else None
 
-    def __init__(self, rank: int, reduced: RelatorSet, living: Sequence[int], quotient: NilpotentQuotient) -> None:
+    def __init__(self, rank: int, reduced: RelatorSet, named: tuple[Word, ...], quotient: NilpotentQuotient) -> None:
         self.rank = rank
         self.reduced = reduced
-        self.living = living
+        self.living = living = sorted(reduced.alive)
         self.quotient = quotient
         self.group = group = quotient.group
-        self.symbols, self.definitions = _symbols(rank, living, group)
-        self.given = [
-            reduced.derivation.give(encoded(product((-(rank + k),), word))) for k, word in enumerate(self.definitions, 1)
-        ]
+        first = rank + len(named)
+        self.symbols, commutators = _symbols(first, living, group)
+        self.given = [reduced.derivation.give(encoded(product((-(first + k),), word))) for k, word in enumerate(commutators, 1)]
+        self.definitions = named + commutators
         self.images = self._images()
         self.goals = self._goals()
 
     def _images(self) -> tuple[Vector, ...]:
         """The image in N of every generator: from the quotient for the living, by their solutions for the eliminated."""
-        images = [self.group.identity] * self.rank
+        images = [self.group.identity] * (self.rank + len(self.definitions))
         for generator, image in zip(self.living, self.quotient.images, strict=True):
             images[generator - 1] = image
         for generator, word in self.reduced.solutions():
             images[generator - 1] = self.group.evaluate(word, images)
-        return tuple(images)
+        return tuple(images[: self.rank])
 
     def normal_form(self, vector: Vector) -> Word:
         """a_1^v_1 a_2^v_2 ... spelled in symbols."""
@@ -279,7 +300,8 @@ class _Attempt:
             return None
         words = reduced.derivation.words
         rules = dict(reduced.single)
-        for number, symbol in zip(self.given, range(self.rank + 1, self.rank + 1 + len(self.given)), strict=True):
+        last = self.rank + len(self.definitions)
+        for number, symbol in zip(self.given, range(last - len(self.given) + 1, last + 1), strict=True):
             for letter in (letter_of(symbol), letter_of(-symbol)):
                 rules[letter] = solved(words[number], number, letter)
         numbers: list[int] = []
@@ -305,7 +327,7 @@ class _Attempt:
         system.longest_solution = longest
         for number in seeds:
             system.insert(number, priority=len(reduced.derivation.words[number]) // 2)
-        eliminated = [g for g, _ in reduced.solutions()]
+        eliminated = [g for g, _ in reduced.solutions() if g <= self.rank]
         late = {goal: g for g in eliminated if (goal := ("generator", g, 0)) in self.goals}
         system.set_goals({goal: word for goal, word in self.goals.items() if goal not in late}, {})
         if not system.run(work=budget.left):

@@ -1,5 +1,6 @@
 """Rewriting with a log: derivations, Tietze moves, Knuth-Bendix completion."""
 
+from lowindex.rewriting.abbreviate import abbreviate
 from lowindex.rewriting.completion import Completion
 from lowindex.rewriting.derivation import Derivation, Factor, Lemma, Proof
 from lowindex.rewriting.order import Order, RecursivePath, Shortlex, WeightedShortlex
@@ -22,6 +23,7 @@ __all__ = [
     "Shortlex",
     "Unfinished",
     "WeightedShortlex",
+    "abbreviate",
     "eliminate_short",
     "encoded",
     "letter_of",

@@ -62,6 +62,11 @@ class Derivation:
         for word in given:
             self.give(encoded(word))
 
+    @property
+    def given(self) -> list[int]:
+        """The numbers of the given equations, in order."""
+        return [number for number, factors in enumerate(self.factors) if factors is None]
+
     def give(self, word: str) -> int:
         """Log a given equation; its number."""
         self.words.append(word)

@@ -105,6 +105,17 @@ class RelatorSet:
         self.budget.spend(1 + self.rules.scanned - before)
         return self._conjugated(equation, word, prefix, factors)
 
+    def equation_without(self, equation: int, word: str, factors: list[Factor]) -> int:
+        """Number of the cyclically reduced form of `word`, where  words[equation] = (factors) · word."""
+        ends = cyclic_ends(word)
+        return self._conjugated(equation, word[ends : len(word) - ends], word[:ends], factors)
+
+    def add_generator(self, generator: int) -> None:
+        """A new generator, whose definition is on the log."""
+        self.alive.add(generator)
+        self.occurrences[generator] = set()
+        self.rules.admit([generator])
+
     def _conjugated(self, equation: int, word: str, prefix: str, factors: list[Factor]) -> int:
         """Log `word`, where  words[equation] = (factors) · prefix word prefix^-1."""
         back = inverted(prefix)
