@@ -3,14 +3,14 @@
 from __future__ import annotations
 
 import time
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Sequence
 from contextlib import suppress
 from typing import Any
 
 import lowindex
 from lowindex.budget import Budget
 from lowindex.checker import check
-from lowindex.cosets import CosetTable
+from lowindex.cosets import CosetTable, enumerate_cosets
 from lowindex.decision.breadth import Breadth
 from lowindex.decision.descent import descend
 from lowindex.decision.finite import cyclic_visits, regular_table
@@ -24,18 +24,25 @@ from lowindex.witness import Witness, virtually_nilpotent
 from lowindex.words import Presentation, Word
 
 
-def hunt(presentation: Presentation, *, effort: int = 5, seconds: float | None = None, listen: Listener = silent) -> Verdict:
+def hunt(
+    presentation: Presentation,
+    *,
+    effort: int = 5,
+    seconds: float | None = None,
+    subgroup: Sequence[Word] = (),
+    listen: Listener = silent,
+) -> Verdict:
     """Decide whether the group has a nilpotent subgroup of finite index, within an effort from 1 to 9.
 
-    `seconds` is a cap on top of the effort. Ctrl-C ends the hunt with the verdict "undecided" and what was searched. InputError for an
-    effort out of range.
+    `seconds` is a cap on top of the effort. `subgroup`: words that generate a subgroup of finite index to start from. Ctrl-C ends
+    the hunt with the verdict "undecided" and what was searched. InputError for an effort out of range.
 
     >>> from lowindex.words import Presentation
     >>> found = hunt(Presentation.parse("⟨a, b | a^2, b^2⟩"))
     >>> found.verdict, found.index, found.growth_degree
     ('virtually nilpotent', 2, 1)
     """
-    return _Hunt(presentation, plan_for(effort), seconds, listen).verdict()
+    return _Hunt(presentation, plan_for(effort), seconds, tuple(subgroup), listen).verdict()
 
 
 LARGEST_FITTING = 400
@@ -43,9 +50,12 @@ LARGEST_FITTING = 400
 
 
 class _Hunt:
-    def __init__(self, presentation: Presentation, plan: Plan, seconds: float | None, listen: Listener) -> None:
+    def __init__(
+        self, presentation: Presentation, plan: Plan, seconds: float | None, subgroup: tuple[Word, ...], listen: Listener
+    ) -> None:
         self.presentation = presentation
         self.plan = plan
+        self.subgroup = subgroup
         self.listen = listen
         self.began = time.monotonic()
         self.budget = Budget(plan.work, seconds=seconds)
@@ -58,6 +68,8 @@ class _Hunt:
     def verdict(self) -> Verdict:
         interrupted = False
         try:
+            if self.subgroup:
+                self._given()
             for stage in self.plan.stages:
                 if self.found is None and not self.budget.exhausted:
                     self._run(stage)
@@ -75,6 +87,16 @@ class _Hunt:
             lane = Breadth(self.whole, reach=stage.reach, budget=budget)
             self._try(lane.visits(), "breadth")
             self.searched |= {"complete_to_index": lane.complete_to, "classes": lane.classes, "nodes": lane.nodes}
+
+    def _given(self) -> None:
+        """Start from the subgroup that the caller has in mind, when its cosets can be enumerated."""
+        reach = max(stage.reach for stage in self.plan.stages if stage.lane == "finite")
+        budget = self.budget.part(self.budget.left // 3)
+        table = enumerate_cosets(self.presentation, self.subgroup, budget=budget, max_cosets=reach).table
+        self.searched["given_index"] = None if table is None else table.index
+        if table is not None:
+            visit = Visit(self.presentation, table, max_class=self.plan.max_class, budget=self.budget, how="the subgroup given")
+            self._try(descend(visit, reach=max(reach, table.index), budget=budget), "descent")
 
     def _finite(self, max_cosets: int, budget: Budget) -> None:
         self.listen(Event("finite", f"coset enumeration, up to {max_cosets} cosets"))

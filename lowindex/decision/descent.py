@@ -24,11 +24,14 @@ QUICK_CLASS = 4
 
 LARGEST_DEGREE = 24
 
+MOST_GENERATORS = 120
+"""A subgroup that needs more generators after Tietze moves ends the descent: linear algebra on it would take too long."""
+
 
 def descend(start: Visit, *, reach: int, budget: Budget) -> Iterator[tuple[Visit, Budget]]:
     """The subgroups to try a proof on, each with the budget for it. The caller stops when a proof is found."""
     visit = start
-    while not budget.exhausted:
+    while not budget.exhausted and visit.rank <= MOST_GENERATORS:
         cut = twisted_characters(visit.rank, visit.relators, visit.homology, budget=budget)
         if cut is None and visit.quotient(QUICK_CLASS).stable:
             yield visit, budget.part(QUICK_PROOF)

@@ -24,7 +24,8 @@ MOST_GENERATORS = 80
 """A quotient that would need more generators is not built: the class before it is returned."""
 
 
-MOST_TAILS = 1500
+MOST_TAILS = 400
+"""A class that would need more tails is not computed."""
 
 
 @dataclass(frozen=True)

@@ -73,6 +73,21 @@ class Presentation:
             raise reader.error(f"expected the end of the word, found {reader.found()}")
         return word
 
+    def words(self, text: str) -> tuple[Word, ...]:
+        """Read words separated by commas.
+
+        >>> Presentation.parse("⟨a, b | ⟩").words("a^2, [a,b]")
+        ((1, 1), (-1, -2, 1, 2))
+        """
+        reader = Reader(text)
+        reader.names = {name: k for k, name in enumerate(self.names, 1)}
+        found = [reader.product()]
+        while reader.accept(","):
+            found.append(reader.product())
+        if reader.peek():
+            raise reader.error(f"expected ',' or the end of the words, found {reader.found()}")
+        return tuple(found)
+
     def text(self, word: Word) -> str:
         """A word as text; "1" for the empty word."""
         return word_text(word, self.names)

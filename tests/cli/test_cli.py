@@ -48,6 +48,26 @@ def test_hunt_json(capsys: Capture) -> None:
     assert (second["finite_order"], second["growth_degree"], second["name"]) == (3, 0, None)
 
 
+def test_start_from_a_subgroup(capsys: Capture) -> None:
+    assert main(["hunt", P4, "--from", "a b a, a^2 b", "--json"]) == 0
+    item = json.loads(capsys.readouterr().out)
+    assert (item["index"], item["searched"]["given_index"]) == (4, 4)
+    assert main(["hunt", P4, "--from", "c"]) == 2
+    assert main(["hunt", P4, "--from", "a b,"]) == 2
+
+
+def test_jobs_give_the_same_answers_in_order(tmp_path: Path, capsys: Capture) -> None:
+    path = tmp_path / "groups.txt"
+    path.write_text("\n".join(f"C{n}: ⟨a | a^{n}⟩" for n in range(2, 8)), encoding="utf-8")
+    answers = []
+    for jobs in ("1", "2"):
+        assert main(["hunt", str(path), "--json", "--jobs", jobs]) == 0
+        items = [json.loads(line) for line in capsys.readouterr().out.splitlines()]
+        answers.append([{key: value for key, value in item.items() if key != "seconds"} for item in items])
+    assert answers[0] == answers[1]
+    assert [item["finite_order"] for item in answers[0]] == list(range(2, 8))
+
+
 def test_undecided(capsys: Capture) -> None:
     assert main(["hunt", "⟨a, b, c, d | a^-1ba=b^2, b^-1cb=c^2, c^-1dc=d^2, d^-1ad=a^2⟩", "--effort", "1"]) == 3
     out = capsys.readouterr().out
