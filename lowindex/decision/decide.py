@@ -21,7 +21,7 @@ from lowindex.events import Event, Listener, silent
 from lowindex.nilpotent import ChainProof
 from lowindex.rewriting import Unfinished
 from lowindex.witness import Witness, virtually_nilpotent
-from lowindex.words import Presentation, Word
+from lowindex.words import Presentation, Word, inverse, product
 
 
 def hunt(
@@ -187,7 +187,7 @@ def _reason(summary: dict[str, Any], visit: Visit) -> str:
 
 def _generators(visit: Visit, proof: ChainProof) -> tuple[Word, ...]:
     """The elements of weight 1 of the chain as words of the group: they generate the subgroup."""
-    words = visit.subgroup.generators
-    return tuple(
-        words[symbol - 1] for symbol, weight in zip(proof.symbols, proof.group.weights, strict=True) if weight == 1
-    )
+    words = list(visit.subgroup.generators)
+    for defined in proof.definitions:
+        words.append(product(*(words[x - 1] if x > 0 else inverse(words[-x - 1]) for x in defined)))
+    return tuple(words[symbol - 1] for symbol, weight in zip(proof.symbols, proof.group.weights, strict=True) if weight == 1)

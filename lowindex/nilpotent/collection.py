@@ -19,6 +19,10 @@ Vector: TypeAlias = tuple[int, ...]
 Definition: TypeAlias = tuple[str, int] | tuple[str, int, int]
 
 
+MOST_STEPS = 1_000_000
+"""Collection gives up (OverflowError) when one group has needed more multiplications by a power of a generator."""
+
+
 @dataclass(frozen=True)
 class NilpotentPresentation:
     """`weights`: nondecreasing from 1. `orders`: 0 for infinite, else >= 2. `powers[j]`: the vector of a_j^orders[j]. `conjugates[j, i]`,
@@ -33,6 +37,12 @@ class NilpotentPresentation:
     definitions: tuple[Definition, ...] = ()
     _images: dict[tuple[int, int, int], Vector] = field(default_factory=dict, compare=False, repr=False)
     _moves: dict[int, frozenset[int]] = field(default_factory=dict, compare=False, repr=False)
+    _steps: list[int] = field(default_factory=lambda: [0], compare=False, repr=False)
+
+    @property
+    def steps(self) -> int:
+        """Multiplications by powers of generators so far: what collection has cost."""
+        return self._steps[0]
 
     @property
     def size(self) -> int:
@@ -65,6 +75,9 @@ class NilpotentPresentation:
 
     def _append(self, vector: Vector, k: int, exponent: int) -> Vector:
         """vector · a_k^exponent."""
+        self._steps[0] += 1
+        if self._steps[0] > MOST_STEPS:
+            raise OverflowError(f"collection needed more than {MOST_STEPS} steps")
         moved = self._moved_by(k)
         tail = vector[k + 1 :]
         if moved and any(vector[j] for j in moved):
@@ -108,7 +121,7 @@ class NilpotentPresentation:
                 moved = self.conjugate_by(rest, k, -1, start=j + 1)
                 value = self.multiply(self.generator(j), self.inverse(moved))
             else:
-                half = exponent // 2
+                half = exponent // 2 if exponent > 0 else -(-exponent // 2)
                 value = self.conjugate_by(self.image(j, k, exponent - half), k, half, start=k + 1) if half else self.generator(j)
             self._images[key] = value
         return self._images[key]

@@ -85,7 +85,10 @@ def nilpotent_quotient(
     many generators. `prefer`: input generators to take first as generators of weight 1."""
     quotient = abelian_quotient(rank, relators, prefer)
     while quotient.nilpotency_class < max_class and not budget.exhausted:
-        larger = _next_class(quotient, relators, budget)
+        try:
+            larger = _next_class(quotient, relators, budget)
+        except OverflowError:
+            break
         if larger is None:
             break
         if larger.stable:
@@ -169,22 +172,30 @@ def _next_class(quotient: NilpotentQuotient, relators: Sequence[Word], budget: B
     cover = _Cover(quotient)
     if len(cover.tails) > MOST_TAILS:
         return None
+    spent = 0
     rows: dict[tuple[int, ...], None] = {}
     for left, right in consistency_pairs(cover.group, most=cover.weight):
-        budget.spend(2 + cover.group.size // 4)
+        spent = _charge(cover, spent, budget)
         if left != right:
             rows[tuple(x - y for x, y in zip(left, right, strict=True))] = None
         if budget.exhausted:
             return None
     for word in relators:
         value = cover.group.evaluate(word, cover.images)
-        budget.spend(1 + len(word) * (1 + cover.group.size // 20))
+        spent = _charge(cover, spent, budget)
         if any(value):
             rows[value] = None
         if budget.exhausted:
             return None
     budget.spend(len(rows) * len(cover.tails) // 5)
     return cover.quotient([list(row[cover.size :]) for row in rows])
+
+
+def _charge(cover: _Cover, spent: int, budget: Budget) -> int:
+    """Charge the steps of collection since `spent`; the steps so far."""
+    steps = cover.group.steps
+    budget.spend(1 + (steps - spent) * (2 + cover.group.size // 60))
+    return steps
 
 
 class _Cover:
