@@ -40,8 +40,8 @@ class Lemma:
 
 @dataclass(frozen=True)
 class Proof:
-    """A cut log. Equations 0..given-1 are the given ones, then the lemmas; goals[i] is the number that proves the
-    i-th goal (-1 where there was nothing to prove)."""
+    """A cut log. Equations 0..given-1 are the given ones, then the lemmas; goals[i] is the number of an equation that is
+    conjugate to the i-th goal or its inverse in the free group (-1 where there was nothing to prove)."""
 
     given: int
     lemmas: tuple[Lemma, ...]
@@ -117,8 +117,11 @@ class Derivation:
             if self.factors[k] is None:
                 continue
             factors = self._expanded(k, placed)
-            if k not in wanted and self._worth_placing(k, factors, users[k]):
+            if len(factors) == 1 or (k not in wanted and self._worth_placing(k, factors, users[k])):
+                # a goal that is a conjugate of another equation needs no lemma of its own
                 placed[k] = factors
+                if len(factors) == 1:
+                    number[k] = number[factors[0].equation]
                 continue
             number[k] = given + len(lemmas)
             lemmas.append(

@@ -22,8 +22,7 @@ def sieradski(n: int) -> str:
 
 
 # Orders: R. M. Thomas, Bull. LMS 21 (1989) 463-465 (L), and C; F(3, n): D. L. Johnson, J. W. Wamsley, D. Wright 1974 (M), C.
-FIBONACCI_ORDERS = {(2, 3): 8, (2, 4): 5, (2, 5): 11, (3, 2): 8, (3, 3): 2, (3, 5): 22}
-FIBONACCI_SLOW = {(2, 7): 29}
+FIBONACCI_ORDERS = {(2, 3): 8, (2, 4): 5, (2, 5): 11, (2, 7): 29, (3, 2): 8, (3, 3): 2, (3, 5): 22, (3, 6): 1512}
 
 # S(2..5): C
 SIERADSKI_ORDERS = {2: 3, 3: 8, 4: 24, 5: 120}

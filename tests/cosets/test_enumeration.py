@@ -20,7 +20,6 @@ GROUPS = {
     # H. S. M. Coxeter, Trans. AMS 45 (1939) 73-150 (M), C
     "(2,3,9;5)": ("⟨a, b | a^2, b^3, (ab)^9, [a,b]^5⟩", 10260),
     "(2,4,7;3)": ("⟨a, b | a^2, b^4, (ab)^7, [a,b]^3⟩", 2184),
-    "F(2,7)": (cyclic.fibonacci(2, 7), 29),
     # OEIS A079682 (L)
     "B(2,4)": ("⟨a, b | a^4, b^4, (ab)^4, (a^-1b)^4, (a^2b)^4, (ab^2)^4, (a^2b^2)^4, (a^-1bab)^4, (ab^-1ab)^4⟩", 4096),
     **{f"Coxeter {name}": row for name, row in coxeter.FINITE.items()},

@@ -12,7 +12,7 @@ from lowindex.algebra import abelianization
 from lowindex.budget import Budget
 from lowindex.rewriting import Completion, Derivation, RecursivePath, RelatorSet, Shortlex, WeightedShortlex, simplify
 from lowindex.rewriting.strings import encoded
-from lowindex.words import Word, inverse, product, reduced
+from lowindex.words import Word, cyclic_form, inverse, product, reduced
 
 ORDERS = [Shortlex([1, 2]), WeightedShortlex([2, 1], {1: 1, 2: 3}), RecursivePath([1, 2])]
 
@@ -59,7 +59,7 @@ def test_heisenberg_centre_by_completion() -> None:
     assert system.finished
     proof = system.derivation.cut([system.proved[0]])
     words = multiplied_out(relators, proof)
-    assert words[proof.goals[0]] == power
+    assert cyclic_form(words[proof.goals[0]]) == cyclic_form(power)
     # and what is false stays open, in every ordering
     for order in (Shortlex([1, 2, 3]), RecursivePath([3, 2, 1])):
         assert len(completed(3, relators, [product(a, c), product(a, b)], order).goals) == 2
@@ -94,4 +94,4 @@ def test_cut_keeps_only_what_goals_use() -> None:
     assert system.run(work=50_000)
     proof = derivation.cut([system.proved[0]])
     assert len(proof.lemmas) <= 3
-    assert multiplied_out([(1, 1), (2, 2), (1, 2, 1, 2)], proof)[proof.goals[0]] == (1, 2, -1, -2)
+    assert multiplied_out([(1, 1), (2, 2), (1, 2, 1, 2)], proof)[proof.goals[0]] in [(1, 2, -1, -2)[k:] + (1, 2, -1, -2)[:k] for k in range(4)]

@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 import ast
+import doctest
 import statistics
 import subprocess
 import sys
 import time
+from importlib import import_module
 from pathlib import Path
 
 import pytest
@@ -114,6 +116,14 @@ def test_import_is_light() -> None:
     code = "import lowindex, sys; print(sorted({'numba','sympy','flint','numpy','networkx','tqdm'} & set(sys.modules)))"
     done = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, check=True)
     assert done.stdout.strip() == "[]"
+
+
+@pytest.mark.parametrize("path", [p for p in FILES if ">>>" in p.read_text(encoding="utf-8")], ids=lambda p: str(p.relative_to(PACKAGE)))
+def test_examples_in_docstrings(path: Path) -> None:
+    name = ".".join(("lowindex", *path.relative_to(PACKAGE).with_suffix("").parts)).removesuffix(".__init__")
+    failed, tried = doctest.testmod(import_module(name))
+    assert tried > 0
+    assert failed == 0
 
 
 def test_public_names() -> None:
