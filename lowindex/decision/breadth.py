@@ -6,7 +6,8 @@ from collections.abc import Iterator
 
 from lowindex.budget import Budget
 from lowindex.cosets import pull_back
-from lowindex.decision.visit import Visit
+from lowindex.decision.descent import REFUTATION
+from lowindex.decision.visit import Trial, Visit
 from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation
 
@@ -22,8 +23,8 @@ class Breadth:
         self.classes = 1
         self.nodes = 0
 
-    def visits(self) -> Iterator[tuple[Visit, Budget]]:
-        """Subgroups with a stable nilpotent quotient, each with a budget for a proof."""
+    def trials(self) -> Iterator[Trial]:
+        """Every class is tried for obstructions, those with a stable nilpotent quotient for a proof."""
         group = Presentation.from_relators(self.start.rank, self.start.relators)
         for index in range(2, self.reach + 1):
             search = SubgroupSearch(group, index, budget=self.budget)
@@ -34,9 +35,10 @@ class Breadth:
                 table = pull_back(found.table, self.start.images)
                 how = f"class {self.classes} of the subgroups by index"
                 visit = Visit(self.start.presentation, table, max_class=self.start.max_class, budget=self.budget, how=how)
+                yield Trial(visit, self.budget.part(REFUTATION), proof=False)
                 quotient = visit.quotient(visit.max_class)
                 if quotient.stable and quotient.nilpotency_class:
-                    yield visit, self.budget.part(self.budget.left // 12)
+                    yield Trial(visit, self.budget.part(self.budget.left // 12), proof=True)
             self.nodes += search.nodes
             if not search.finished:
                 return

@@ -3,24 +3,26 @@
 from __future__ import annotations
 
 import time
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Sequence
 from contextlib import suppress
+from dataclasses import replace
 from typing import Any
 
 import lowindex
 from lowindex.budget import Budget
-from lowindex.checker import check
+from lowindex.checker import Refused, check
 from lowindex.cosets import CosetTable, enumerate_cosets
 from lowindex.decision.breadth import Breadth
 from lowindex.decision.descent import descend
 from lowindex.decision.finite import cyclic_visits, regular_table
 from lowindex.decision.plan import Plan, Stage, plan_for
-from lowindex.decision.verdict import UNDECIDED, YES, Verdict
-from lowindex.decision.visit import Visit
+from lowindex.decision.verdict import NO, UNDECIDED, YES, Verdict
+from lowindex.decision.visit import Trial, Visit
 from lowindex.events import Event, Listener, silent
 from lowindex.nilpotent import ChainProof
+from lowindex.obstructions import AffineObstruction
 from lowindex.rewriting import Unfinished
-from lowindex.witness import Witness, virtually_nilpotent
+from lowindex.witness import Witness, not_virtually_nilpotent, virtually_nilpotent
 from lowindex.words import Presentation, Word, inverse, product
 
 
@@ -60,7 +62,7 @@ class _Hunt:
         self.began = time.monotonic()
         self.budget = Budget(plan.work, seconds=seconds)
         self.searched: dict[str, Any] = {"subgroups": 0, "complete_to_index": 1}
-        self.found: tuple[Visit, ChainProof, Witness] | None = None
+        self.found: Verdict | None = None
         self.open_at: int | None = None
         whole = CosetTable.from_permutations([[0]] * presentation.rank)
         self.whole = Visit(presentation, whole, max_class=plan.max_class, budget=self.budget)
@@ -75,7 +77,7 @@ class _Hunt:
                     self._run(stage)
         except KeyboardInterrupt:
             interrupted = True
-        return self._decided() if self.found else self._undecided(interrupted)
+        return self.found or self._undecided(interrupted)
 
     def _run(self, stage: Stage) -> None:
         budget = self.budget.part(self.plan.work * stage.share // 100)
@@ -85,7 +87,7 @@ class _Hunt:
             self._try(descend(self.whole, reach=stage.reach, budget=budget), "descent")
         else:
             lane = Breadth(self.whole, reach=stage.reach, budget=budget)
-            self._try(lane.visits(), "breadth")
+            self._try(lane.trials(), "breadth")
             self.searched |= {"complete_to_index": lane.complete_to, "classes": lane.classes, "nodes": lane.nodes}
 
     def _given(self) -> None:
@@ -110,37 +112,50 @@ class _Hunt:
         if self.found is None:
             self._try(cyclic_visits(self.whole, table, self.budget.part(self.budget.left // 2)), "finite", table.index)
 
-    def _try(self, visits: Iterable[tuple[Visit, Budget]], lane: str, order: int | None = None) -> None:
-        """Try to prove the subgroups of a lane nilpotent, one after the other, until one is. In a finite group of known order those
-        whose nilpotent quotient is too small are passed over."""
-        for visit, budget in _while_finished(visits):
-            if order is not None and visit.quotient(visit.max_class).order != order // visit.index:
-                continue
-            self.searched["subgroups"] += 1
-            self.listen(Event(lane, f"index {visit.index}: {visit.how}", visit.index))
-            proof = visit.proof(budget)
-            if proof is None:
-                self.open_at = visit.index
-                continue
-            witness = virtually_nilpotent(
-                self.presentation, visit.subgroup, proof, effort=self.plan.effort, version=lowindex.__version__
-            )
-            check(witness.text, presentation=(list(self.presentation.names), list(self.presentation.relators)))
-            self.found = visit, proof, witness
-            return
+    def _try(self, trials: Iterable[Trial], lane: str, order: int | None = None) -> None:
+        """Go through the trials of a lane until one decides, or a presentation cannot be reduced within the budget. In a finite group of
+        known order subgroups whose nilpotent quotient is too small are passed over, and nothing is refuted."""
+        with suppress(Unfinished):
+            for trial in trials:
+                visit = trial.visit
+                if not trial.proof:
+                    self.searched["subgroups"] += 1
+                    self.listen(Event(lane, f"index {visit.index}: {visit.how}", visit.index))
+                    if order is None:
+                        self._refute(trial)
+                elif order is None or visit.quotient(visit.max_class).order == order // visit.index:
+                    self._prove(trial)
+                if self.found is not None:
+                    return
 
-    def _decided(self) -> Verdict:
-        assert self.found is not None
-        visit, proof, witness = self.found
+    def _refute(self, trial: Trial) -> None:
+        """Propose obstructions on a subgroup to the checker; the first that it accepts decides."""
+        visit = trial.visit
+        for obstruction in visit.obstructions(trial.budget):
+            witness = not_virtually_nilpotent(
+                self.presentation, visit.table, obstruction, effort=self.plan.effort, version=lowindex.__version__
+            )
+            if self._accepted(witness):
+                reason = refutation(obstruction, visit)
+                self.found = replace(self._verdict(NO, reason), index=visit.index, witness=witness)
+                return
+
+    def _prove(self, trial: Trial) -> None:
+        """Try to prove a subgroup nilpotent."""
+        visit = trial.visit
+        proof = visit.proof(trial.budget)
+        if proof is None:
+            if visit.quotient(visit.max_class).nilpotency_class:
+                self.open_at = visit.index
+            return
+        witness = virtually_nilpotent(
+            self.presentation, visit.subgroup, proof, effort=self.plan.effort, version=lowindex.__version__
+        )
+        if not self._accepted(witness):
+            raise AssertionError("the checker refused a proof of nilpotence")
         summary = witness.content["summary"]
-        return Verdict(
-            self.presentation,
-            YES,
-            _reason(summary, visit),
-            self.searched,
-            self.plan.effort,
-            time.monotonic() - self.began,
-            lowindex.__version__,
+        self.found = replace(
+            self._verdict(YES, _reason(summary, visit)),
             index=summary["index"],
             nilpotency_class=summary["class"],
             hirsch_length=summary["hirsch_length"],
@@ -149,6 +164,19 @@ class _Hunt:
             factors=tuple((rank, tuple(torsion)) for rank, torsion in summary["factors"]),
             generators=_generators(visit, proof),
             witness=witness,
+        )
+
+    def _accepted(self, witness: Witness) -> bool:
+        """Whether the independent checker accepts a witness for this presentation."""
+        try:
+            check(witness.text, presentation=(self.presentation.names, self.presentation.relators))
+        except Refused:
+            return False
+        return True
+
+    def _verdict(self, verdict: str, reason: str) -> Verdict:
+        return Verdict(
+            self.presentation, verdict, reason, self.searched, self.plan.effort, time.monotonic() - self.began, lowindex.__version__
         )
 
     def _undecided(self, interrupted: bool) -> Verdict:
@@ -160,22 +188,29 @@ class _Hunt:
             reason = "no witness within the time given"
         else:
             reason = f"no witness within effort {self.plan.effort}"
-        return Verdict(
-            self.presentation,
-            UNDECIDED,
-            reason,
-            self.searched,
-            self.plan.effort,
-            time.monotonic() - self.began,
-            lowindex.__version__,
-            open_at=self.open_at,
-        )
+        return replace(self._verdict(UNDECIDED, reason), open_at=self.open_at)
 
 
-def _while_finished(visits: Iterable[tuple[Visit, Budget]]) -> Iterator[tuple[Visit, Budget]]:
-    """The visits of a lane, which ends when a presentation cannot be reduced within the budget."""
-    with suppress(Unfinished):
-        yield from visits
+def refutation(obstruction: AffineObstruction | int | None, visit: Visit) -> str:
+    """An obstruction in a few words."""
+    where = "the group itself" if visit.index == 1 else f"a subgroup of index {visit.index}"
+    if obstruction is None:
+        return f"small cancellation C'(1/6): {where} is hyperbolic and neither trivial nor infinite cyclic"
+    if isinstance(obstruction, int):
+        return f"{where} has too few relators modulo {obstruction} (Golod-Shafarevich, Lubotzky)"
+    field = {"Q": "the rationals", "Q[t]/(f)": f"Q[t]/({_polynomial(obstruction.modulus)})", "F_p(t)": f"F_{obstruction.prime}(t)"}
+    return f"{where} acts on {field[obstruction.kind]} by affine maps with a dilation and a translation"
+
+
+def _polynomial(coefficients: Sequence[int]) -> str:
+    terms = []
+    for power in range(len(coefficients) - 1, -1, -1):
+        c = coefficients[power]
+        if c:
+            size = "" if abs(c) == 1 and power else str(abs(c))
+            variable = "" if not power else "t" if power == 1 else f"t^{power}"
+            terms.append(f"{'-' if c < 0 else '+'} {size}{variable}")
+    return " ".join(terms).removeprefix("+ ")
 
 
 def _reason(summary: dict[str, Any], visit: Visit) -> str:

@@ -11,13 +11,16 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from lowindex.budget import Budget
-from lowindex.decision.visit import Visit
+from lowindex.decision.visit import Trial, Visit
 from lowindex.quotients import Cut, induced_cuts, layer_cuts, permutation_cut, twisted_characters
 from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation
 
 QUICK_PROOF = 400_000
 """Work of a first attempt at a proof; the last one, when no quotient says otherwise, may take everything."""
+
+REFUTATION = 300_000
+"""Work that looking for obstructions on one subgroup may take."""
 
 QUICK_CLASS = 4
 """The class up to which the nilpotent quotient is computed before other quotients are looked for."""
@@ -28,19 +31,20 @@ MOST_GENERATORS = 120
 """A subgroup that needs more generators after Tietze moves ends the descent: linear algebra on it would take too long."""
 
 
-def descend(start: Visit, *, reach: int, budget: Budget) -> Iterator[tuple[Visit, Budget]]:
-    """The subgroups to try a proof on, each with the budget for it. The caller stops when a proof is found."""
+def descend(start: Visit, *, reach: int, budget: Budget) -> Iterator[Trial]:
+    """The subgroups to look for obstructions on and to try proofs on. The caller stops when one of them decides."""
     visit = start
     while not budget.exhausted and visit.rank <= MOST_GENERATORS:
+        yield Trial(visit, budget.part(REFUTATION), proof=False)
         cut = twisted_characters(visit.rank, visit.relators, visit.homology, budget=budget)
         if cut is None and visit.quotient(QUICK_CLASS).stable:
-            yield visit, budget.part(QUICK_PROOF)
+            yield Trial(visit, budget.part(QUICK_PROOF), proof=True)
         cut = cut or next(layer_cuts(visit.rank, visit.relators, budget=budget.part(budget.left // 4)), None)
         cut = cut or next(induced_cuts(visit.rank, visit.relators, budget=budget.part(budget.left // 3)), None)
         cut = cut or first_permutation_cut(visit, budget.part(budget.left // 3))
         if cut is None:
             if visit.quotient(visit.max_class).stable:
-                yield visit, budget
+                yield Trial(visit, budget, proof=True)
             return
         if visit.index * cut.table.index > reach:
             return

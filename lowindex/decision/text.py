@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from lowindex.decision.verdict import UNDECIDED, Verdict
+from lowindex.decision.verdict import NO, UNDECIDED, Verdict
 from lowindex.words import Presentation
 
 MOST_GENERATORS = 8
@@ -17,6 +17,9 @@ def describe(group: Presentation, verdict: Verdict, witness_file: str | None = N
         lines.append("  undecided is not an answer about the group; try a higher --effort")
         return "\n".join(lines)
     lines.append(f"  index      {verdict.index}")
+    if verdict.verdict == NO:
+        lines.append("  witness    accepted by the independent checker" + (f": {witness_file}" if witness_file else ""))
+        return "\n".join(lines)
     lines.append(f"  subgroup   {_generators(group, verdict)}")
     if verdict.finite_order is not None:
         lines.append(f"  order      {verdict.finite_order}")

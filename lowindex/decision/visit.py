@@ -5,15 +5,26 @@ Everything is computed when it is first asked for and kept.
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
 from functools import cached_property
 
 from lowindex.algebra import Abelianization, abelianization
 from lowindex.budget import Budget
 from lowindex.cosets import CosetTable, SubgroupPresentation, compose, pull_back, subgroup_presentation
 from lowindex.nilpotent import ChainProof, NilpotentQuotient, nilpotent_quotient, prove_nilpotent, simplified_relators
+from lowindex.obstructions import AffineObstruction, affine_obstruction, pro_p_prime
 from lowindex.rewriting import RelatorSet
 from lowindex.words import Presentation, Word
+
+
+@dataclass(frozen=True)
+class Trial:
+    """What a lane proposes: prove that the subgroup of a visit is nilpotent (`proof`), or look for an obstruction on it."""
+
+    visit: Visit
+    budget: Budget
+    proof: bool
 
 
 class Visit:
@@ -74,6 +85,18 @@ class Visit:
     def proof(self, budget: Budget) -> ChainProof | None:
         """A proof that H is nilpotent, if the budget is enough to find one."""
         return prove_nilpotent(self.subgroup.rank, self.subgroup.relators, max_class=self.max_class, budget=budget)
+
+    def obstructions(self, budget: Budget) -> Iterator[AffineObstruction | int | None]:
+        """Obstructions to propose to the checker, cheapest first: a prime for the pro-p test, None for small cancellation (only the
+        group itself is tried), an affine representation."""
+        prime = pro_p_prime(self.rank, self.relators, self.homology)
+        if prime is not None:
+            yield prime
+        if self.index == 1 and self.relators:
+            yield None
+        affine = affine_obstruction(self.rank, self.relators, self.homology, self.images, budget=budget)
+        if affine is not None:
+            yield affine
 
     def below(self, table: CosetTable, *, how: str) -> Visit:
         """The subgroup K of H that is the stabiliser of 0 in a table over the generators left after Tietze moves."""

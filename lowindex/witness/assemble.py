@@ -2,11 +2,30 @@
 
 from __future__ import annotations
 
-from lowindex.cosets import SubgroupPresentation
+from typing import TypeAlias, cast
+
+from lowindex.cosets import CosetTable, SubgroupPresentation
 from lowindex.nilpotent import ChainProof, conjugate_pairs
-from lowindex.witness.claims import Chain, Goals, NilpotentSummary, Subject, VirtuallyNilpotent
+from lowindex.obstructions import AffineObstruction
+from lowindex.witness.claims import (
+    Affine,
+    Chain,
+    Element,
+    Goals,
+    NilpotentSummary,
+    NotVirtuallyNilpotent,
+    NumberField,
+    ProP,
+    RationalFunctions,
+    Rationals,
+    SmallCancellation,
+    Subject,
+    VirtuallyNilpotent,
+)
 from lowindex.witness.writer import Witness, write
 from lowindex.words import Presentation
+
+Elements: TypeAlias = tuple[Element, ...]
 
 
 def virtually_nilpotent(
@@ -23,6 +42,37 @@ def virtually_nilpotent(
             summary=_summary(subgroup.table.index, proof),
         )
     )
+
+
+def not_virtually_nilpotent(
+    presentation: Presentation,
+    table: CosetTable,
+    obstruction: AffineObstruction | int | None,
+    *,
+    effort: int,
+    version: str,
+) -> Witness:
+    """The witness that the stabiliser of point 0 carries an obstruction: an affine one, a prime for the pro-p test, or (None) small
+    cancellation."""
+    claim: Affine | ProP | SmallCancellation
+    if obstruction is None:
+        claim = SmallCancellation()
+    elif isinstance(obstruction, int):
+        claim = ProP(obstruction)
+    else:
+        claim = _affine(obstruction)
+    subject = Subject(presentation, tuple(map(tuple, table.permutations)), version, effort)
+    return write(NotVirtuallyNilpotent(subject, claim, table.index))
+
+
+def _affine(found: AffineObstruction) -> Affine:
+    field: Rationals | NumberField | RationalFunctions = Rationals()
+    if found.kind == "Q[t]/(f)":
+        field = NumberField(found.modulus)
+    elif found.kind == "F_p(t)":
+        field = RationalFunctions(found.prime)
+    multipliers, translations = cast(Elements, found.multipliers), cast(Elements, found.translations)
+    return Affine(field, multipliers, translations, found.dilation, found.translation)
 
 
 def _chain(proof: ChainProof) -> Chain:

@@ -23,7 +23,7 @@ LAYERS = [
     {"cosets", "algebra", "rewriting"},
     {"search"},
     {"quotients"},
-    {"nilpotent"},
+    {"nilpotent", "obstructions"},
     {"witness"},
     {"decision"},
     {"cli"},
