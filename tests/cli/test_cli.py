@@ -137,7 +137,8 @@ def test_seconds_are_a_cap() -> None:
 
 
 def test_interrupt_keeps_what_was_found() -> None:
-    command = [sys.executable, "-m", "lowindex.cli.main", "hunt", "⟨a, b | ⟩", "--effort", "9", "--json"]
+    thompson = "⟨a, b | [a b^-1, a^-1 b a], [a b^-1, a^-2 b a^2]⟩"
+    command = [sys.executable, "-m", "lowindex.cli.main", "hunt", thompson, "--effort", "9", "--json"]
     with subprocess.Popen(command, stdout=subprocess.PIPE, stderr=subprocess.PIPE, cwd=ROOT) as process:
         time.sleep(3)
         process.send_signal(signal.SIGINT)
