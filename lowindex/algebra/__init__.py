@@ -1,6 +1,15 @@
 """Exact linear algebra for groups: abelianization, free differential calculus."""
 
-from lowindex.algebra.abelian import Abelianization, abelianization, exponent, mod_p_rank, relation_matrix
-from lowindex.algebra.fox import jacobian_mod
+from lowindex.algebra.abelian import Abelianization, abelianization, exponent, exponent_sums, mod_p_rank, relation_matrix
+from lowindex.algebra.fox import fox_terms, jacobian_mod
 
-__all__ = ["Abelianization", "abelianization", "exponent", "jacobian_mod", "mod_p_rank", "relation_matrix"]
+__all__ = [
+    "Abelianization",
+    "abelianization",
+    "exponent",
+    "exponent_sums",
+    "fox_terms",
+    "jacobian_mod",
+    "mod_p_rank",
+    "relation_matrix",
+]

@@ -40,13 +40,19 @@ class Abelianization:
         return " × ".join(free + [f"C{d}" for d in self.torsion]) or "1"
 
 
+def exponent_sums(rank: int, word: Word) -> list[int]:
+    """The exponent sum of every generator 1..rank in a word."""
+    row = [0] * rank
+    for letter in word:
+        row[abs(letter) - 1] += 1 if letter > 0 else -1
+    return row
+
+
 def relation_matrix(rank: int, relators: Sequence[Word]) -> list[list[int]]:
     """Exponent sums: one row of length `rank` for every relator that is not 0 in the abelianization, without repeats."""
     rows: dict[tuple[int, ...], None] = {}
     for word in relators:
-        row = [0] * rank
-        for letter in word:
-            row[abs(letter) - 1] += 1 if letter > 0 else -1
+        row = exponent_sums(rank, word)
         if any(row):
             rows[tuple(row)] = None
     return [list(row) for row in rows]

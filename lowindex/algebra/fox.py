@@ -10,6 +10,23 @@ from collections.abc import Sequence
 
 from lowindex.words import Word
 
+Height = tuple[int, ...]
+
+
+def fox_terms(word: Word, heights: Sequence[Height]) -> dict[tuple[int, Height], int]:
+    """The derivatives of a word in the group ring of Z^b, generator k + 1 going to heights[k] in Z^b: the coefficient of the monomial h in
+    the derivative by generator k + 1, at key (k, h); zeros are left out."""
+    terms: dict[tuple[int, Height], int] = {}
+    here: Height = (0,) * (len(heights[0]) if heights else 0)
+    for letter in word:
+        k = abs(letter) - 1
+        if letter < 0:
+            here = tuple([x - y for x, y in zip(here, heights[k], strict=True)])
+        terms[k, here] = terms.get((k, here), 0) + (1 if letter > 0 else -1)
+        if letter > 0:
+            here = tuple([x + y for x, y in zip(here, heights[k], strict=True)])
+    return {key: value for key, value in terms.items() if value}
+
 
 def jacobian_mod(relators: Sequence[Word], values: Sequence[int], q: int) -> list[list[int]]:
     """The Jacobian at the character that takes generator g to the unit values[g - 1] of F_q; entries mod q. Rows of zeros are left out."""

@@ -35,7 +35,7 @@ class Breadth:
                 table = pull_back(found.table, self.start.images)
                 how = f"class {self.classes} of the subgroups by index"
                 visit = Visit(self.start.presentation, table, max_class=self.start.max_class, budget=self.budget, how=how)
-                yield Trial(visit, self.budget.part(REFUTATION), proof=False)
+                yield Trial(visit, self.budget.part(min(REFUTATION, self.budget.left // 10)), proof=False)
                 quotient = visit.quotient(visit.max_class)
                 if quotient.stable and quotient.nilpotency_class:
                     yield Trial(visit, self.budget.part(self.budget.left // 12), proof=True)

@@ -20,7 +20,7 @@ from lowindex.decision.verdict import NO, UNDECIDED, YES, Verdict
 from lowindex.decision.visit import Trial, Visit
 from lowindex.events import Event, Listener, silent
 from lowindex.nilpotent import ChainProof
-from lowindex.obstructions import AffineObstruction
+from lowindex.obstructions import AffineObstruction, Obstruction, ProPObstruction
 from lowindex.rewriting import Unfinished
 from lowindex.witness import Witness, not_virtually_nilpotent, virtually_nilpotent
 from lowindex.words import Presentation, Word, inverse, product
@@ -191,15 +191,15 @@ class _Hunt:
         return replace(self._verdict(UNDECIDED, reason), open_at=self.open_at)
 
 
-def refutation(obstruction: AffineObstruction | int | None, visit: Visit) -> str:
+def refutation(obstruction: Obstruction, visit: Visit) -> str:
     """An obstruction in a few words."""
     where = "the group itself" if visit.index == 1 else f"a subgroup of index {visit.index}"
-    if obstruction is None:
-        return f"small cancellation C'(1/6): {where} is hyperbolic and neither trivial nor infinite cyclic"
-    if isinstance(obstruction, int):
-        return f"{where} has too few relators modulo {obstruction} (Golod-Shafarevich, Lubotzky)"
-    field = {"Q": "the rationals", "Q[t]/(f)": f"Q[t]/({_polynomial(obstruction.modulus)})", "F_p(t)": f"F_{obstruction.prime}(t)"}
-    return f"{where} acts on {field[obstruction.kind]} by affine maps with a dilation and a translation"
+    if isinstance(obstruction, ProPObstruction):
+        return f"{where} has too few relators modulo {obstruction.prime} (Golod-Shafarevich, Lubotzky)"
+    if isinstance(obstruction, AffineObstruction):
+        field = {"Q": "the rationals", "Q[t]/(f)": f"Q[t]/({_polynomial(obstruction.modulus)})", "F_p(t)": f"F_{obstruction.prime}(t)"}
+        return f"{where} acts on {field[obstruction.kind]} by affine maps with a dilation and a translation"
+    return f"small cancellation C'(1/6): {where} is hyperbolic and neither trivial nor infinite cyclic"
 
 
 def _polynomial(coefficients: Sequence[int]) -> str:

@@ -35,7 +35,7 @@ def descend(start: Visit, *, reach: int, budget: Budget) -> Iterator[Trial]:
     """The subgroups to look for obstructions on and to try proofs on. The caller stops when one of them decides."""
     visit = start
     while not budget.exhausted and visit.rank <= MOST_GENERATORS:
-        yield Trial(visit, budget.part(REFUTATION), proof=False)
+        yield Trial(visit, budget.part(min(REFUTATION, budget.left // 10)), proof=False)
         cut = twisted_characters(visit.rank, visit.relators, visit.homology, budget=budget)
         if cut is None and visit.quotient(QUICK_CLASS).stable:
             yield Trial(visit, budget.part(QUICK_PROOF), proof=True)

@@ -13,7 +13,7 @@ from lowindex.algebra import Abelianization, abelianization
 from lowindex.budget import Budget
 from lowindex.cosets import CosetTable, SubgroupPresentation, compose, pull_back, subgroup_presentation
 from lowindex.nilpotent import ChainProof, NilpotentQuotient, nilpotent_quotient, prove_nilpotent, simplified_relators
-from lowindex.obstructions import AffineObstruction, affine_obstruction, pro_p_prime
+from lowindex.obstructions import Obstruction, SmallCancellation, affine_obstructions, pro_p_obstruction
 from lowindex.rewriting import RelatorSet
 from lowindex.words import Presentation, Word
 
@@ -86,17 +86,15 @@ class Visit:
         """A proof that H is nilpotent, if the budget is enough to find one."""
         return prove_nilpotent(self.subgroup.rank, self.subgroup.relators, max_class=self.max_class, budget=budget)
 
-    def obstructions(self, budget: Budget) -> Iterator[AffineObstruction | int | None]:
-        """Obstructions to propose to the checker, cheapest first: a prime for the pro-p test, None for small cancellation (only the
-        group itself is tried), an affine representation."""
-        prime = pro_p_prime(self.rank, self.relators, self.homology)
-        if prime is not None:
-            yield prime
+    def obstructions(self, budget: Budget) -> Iterator[Obstruction]:
+        """Obstructions to propose to the checker: affine ones first, as they are the easiest to check by hand and by other programs.
+        Small cancellation is proposed for the group itself only."""
+        yield from affine_obstructions(self.rank, self.relators, self.homology, self.images, budget=budget)
+        pro_p = pro_p_obstruction(self.rank, self.relators, self.homology)
+        if pro_p is not None:
+            yield pro_p
         if self.index == 1 and self.relators:
-            yield None
-        affine = affine_obstruction(self.rank, self.relators, self.homology, self.images, budget=budget)
-        if affine is not None:
-            yield affine
+            yield SmallCancellation()
 
     def below(self, table: CosetTable, *, how: str) -> Visit:
         """The subgroup K of H that is the stabiliser of 0 in a table over the generators left after Tietze moves."""

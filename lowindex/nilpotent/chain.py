@@ -15,11 +15,12 @@ from __future__ import annotations
 
 from collections.abc import Callable, Hashable, Iterator, Sequence
 from dataclasses import dataclass
+from typing import NamedTuple
 
 from lowindex.budget import Budget
 from lowindex.nilpotent.collection import NilpotentPresentation, Vector
 from lowindex.nilpotent.enumerated import finite_replay
-from lowindex.nilpotent.lattice import close_conjugations
+from lowindex.nilpotent.lattice import close_conjugations, largest_clique
 from lowindex.nilpotent.quotient import NilpotentQuotient, nilpotent_quotient
 from lowindex.rewriting import (
     Completion,
@@ -56,8 +57,13 @@ FIRST_SHARE = 60_000
 """Work of one attempt at a proof in the first round; later rounds have four times as much each."""
 
 
-_Prepared = tuple[RelatorSet, tuple[Word, ...]]
-"""Relators made ready for proofs, and the words named on the way (symbols behind the generators)."""
+class _Prepared(NamedTuple):
+    """Relators made ready for proofs, the words named on the way (symbols behind the generators), and the generators in the order of a
+    collection in which the chain is rewritten in terms of them (empty: they are rewritten in terms of the chain)."""
+
+    relators: RelatorSet
+    named: tuple[Word, ...] = ()
+    collected: tuple[int, ...] = ()
 
 
 @dataclass(frozen=True)
@@ -85,7 +91,7 @@ def prove_nilpotent(rank: int, relators: Sequence[Word], *, max_class: int, budg
     relators and several orderings take turns with growing shares of the budget.
     """
     attempts: list[_Attempt] = []
-    for prepare in (_guided, _eliminated, _abbreviated, _as_given):
+    for prepare in (_guided, _collected, _eliminated, _abbreviated, _as_given):
         attempt = _Attempt.made(rank, relators, prepare, max_class, budget)
         if attempt is None:
             continue
@@ -135,12 +141,28 @@ def _as_given(rank: int, relators: Sequence[Word], max_class: int, budget: Budge
     """As `_merged`, and relators are shortened by each other."""
     reduced = _merged(rank, relators, budget)
     reduced.settle()
-    return reduced, ()
+    return _Prepared(reduced)
+
+
+def _collected(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
+    """For extensions of an abelian group by a few more generators: others are solved in terms of a largest commuting set, what the rest
+    does to it is closed by linear algebra, and words are collected with the commuting generators last: proofs are exponent arithmetic."""
+    reduced = _merged(rank, relators, budget)
+    if len(reduced.alive) > MANY:
+        simplify(reduced)
+    reduced.settle()
+    commuting = largest_clique(reduced, reduced.alive)
+    propagate(reduced, commuting, dict.fromkeys(reduced.alive, 1))
+    simplify(reduced, commuting)
+    _close(reduced, budget)
+    commuting = largest_clique(reduced, reduced.alive)
+    others = sorted(reduced.alive.difference(commuting))
+    return _Prepared(reduced, collected=(*commuting, *others))
 
 
 def _eliminated(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
     """Tietze moves without a plan."""
-    return simplified_relators(rank, relators, budget=budget), ()
+    return _Prepared(simplified_relators(rank, relators, budget=budget))
 
 
 def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
@@ -149,7 +171,7 @@ def _guided(rank: int, relators: Sequence[Word], max_class: int, budget: Budget)
     if len(reduced.alive) > MANY:
         simplify(reduced)
     _solve(reduced, max_class, budget)
-    return reduced, ()
+    return _Prepared(reduced)
 
 
 def _abbreviated(rank: int, relators: Sequence[Word], max_class: int, budget: Budget) -> _Prepared:
@@ -161,7 +183,7 @@ def _abbreviated(rank: int, relators: Sequence[Word], max_class: int, budget: Bu
     for number in reduced.derivation.given[len(relators) :]:
         reduced.insert(number)
     _solve(reduced, max_class, budget)
-    return reduced, tuple(named)
+    return _Prepared(reduced, tuple(named))
 
 
 def _solve(reduced: RelatorSet, max_class: int, budget: Budget) -> None:
@@ -179,6 +201,10 @@ def _solve(reduced: RelatorSet, max_class: int, budget: Budget) -> None:
     propagate(reduced, basis, weight)
     reduced.settle()
     simplify(reduced, basis, weight=weight)
+    _close(reduced, budget)
+
+
+def _close(reduced: RelatorSet, budget: Budget) -> None:
     while close_conjugations(reduced, reduced.alive) and not budget.exhausted:
         pass
 
@@ -195,18 +221,21 @@ class _Attempt:
         max_class: int,
         budget: Budget,
     ) -> _Attempt | None:
-        """Prepare the relators; None when that grows too much or the nilpotent quotient does not become stable."""
+        """Prepare the relators; None when that grows too much, or does not suit the nilpotent quotient, or that does not become stable."""
         try:
-            reduced, named = prepare(rank, relators, max_class, budget)
-            living = sorted(reduced.alive)
-            quotient = quotient_of(reduced, max_class=max_class, budget=budget, prefer=living[::-1])
+            prepared = prepare(rank, relators, max_class, budget)
+            living = sorted(prepared.relators.alive)
+            quotient = quotient_of(prepared.relators, max_class=max_class, budget=budget, prefer=living[::-1])
         except Unfinished:
             return None
-        return cls(rank, reduced, named, quotient) if quotient.stable else None
+        if not quotient.stable or (prepared.collected and quotient.nilpotency_class < 2):
+            return None
+        return cls(rank, prepared, quotient)
 
-    def __init__(self, rank: int, reduced: RelatorSet, named: tuple[Word, ...], quotient: NilpotentQuotient) -> None:
+    def __init__(self, rank: int, prepared: _Prepared, quotient: NilpotentQuotient) -> None:
         self.rank = rank
-        self.reduced = reduced
+        self.reduced, named, self.collected = prepared
+        reduced = self.reduced
         self.living = living = sorted(reduced.alive)
         self.quotient = quotient
         self.group = group = quotient.group
@@ -245,16 +274,19 @@ class _Attempt:
                 goals["power", j, 0] = product((symbols[j],) * order, target)
         return {goal: word for goal, word in goals.items() if word}
 
-    def orders(self) -> Iterator[tuple[Order, int]]:
-        """The portfolio: orderings, each with the length up to which a relator solves a generator outside the chain."""
+    def orders(self) -> Iterator[tuple[Order, int, set[int]]]:
+        """The portfolio: orderings, each with the length up to which a relator solves a generator, and the generators never solved."""
         chain = list(self.symbols)
+        if self.collected:
+            yield RecursivePath([*self.collected, *(x for x in chain if x not in self.reduced.alive)]), 60, set(self.collected)
+            return
         others = [g for g in self.living if g not in set(chain)]
         weight = dict(zip(chain, self.group.weights, strict=True)) | dict.fromkeys(others, 1)
         if self.quotient.nilpotency_class > 1:
-            yield RecursivePath(chain[::-1] + others), 60
-        yield Shortlex(chain + others), 12
+            yield RecursivePath(chain[::-1] + others), 60, set(chain)
+        yield Shortlex(chain + others), 12, set(chain)
         if self.quotient.nilpotency_class > 2:
-            yield WeightedShortlex(chain + others, weight), 12
+            yield WeightedShortlex(chain + others, weight), 12, set(chain)
 
     def try_all(self, budget: Budget, share: int) -> ChainProof | None:
         """As `_try_all`; None, too, when words grew too long."""
@@ -267,16 +299,16 @@ class _Attempt:
         """Each ordering once, with this share of the budget; the shorter of the proof found and of one that starts from the relators it
         used."""
         seeds = [*self.reduced.active, *self.given]
-        for order, longest in self.orders():
+        for order, longest, keep in self.orders():
             part = budget.part(share)
             known = len(self.reduced.derivation.words)
-            goals = self.run(order, longest, seeds, part)
+            goals = self.run(order, longest, keep, seeds, part)
             if goals is None:
                 self.reduced.derivation.forget_from(known)
                 continue
             proof = self.reduced.derivation.cut(goals)
             used = self.reduced.derivation.used(goals)
-            again = self.run(order, longest, [n for n in seeds if n in used], budget.part(2 * part.spent + 1000))
+            again = self.run(order, longest, keep, [n for n in seeds if n in used], budget.part(2 * part.spent + 1000))
             if again is not None:
                 proof = min(proof, self.reduced.derivation.cut(again), key=lambda found: found.symbols)
             return self._proof(proof)
@@ -317,13 +349,13 @@ class _Attempt:
             numbers.append(reduced.derivation.derive(goal, factors))
         return numbers
 
-    def run(self, order: Order, longest: int, seeds: Sequence[int], budget: Budget) -> list[int] | None:
+    def run(self, order: Order, longest: int, keep: set[int], seeds: Sequence[int], budget: Budget) -> list[int] | None:
         """One completion: first what concerns living generators and the chain, then the eliminated generators. The numbers of the
         equations that prove the goals, None when some stayed open."""
         reduced = self.reduced
         system = Completion(reduced.derivation, order, {*self.living, *self.symbols}, budget=budget)
         system.single = dict(reduced.single)
-        system.keep = set(self.symbols)
+        system.keep = keep
         system.longest_solution = longest
         for number in seeds:
             system.insert(number, priority=len(reduced.derivation.words[number]) // 2)

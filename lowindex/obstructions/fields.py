@@ -1,6 +1,6 @@
 """The fields in which affine representations are looked for: Q, Q[t]/(f) and F_p(t), with exact arithmetic by python-flint.
 
-Every field has an element t, the multiplier; elements are written for witnesses as the checker's grammar has them.
+Every field has a distinguished element t; elements are written for witnesses as the checker's grammar has them.
 """
 
 from __future__ import annotations
@@ -14,13 +14,12 @@ Element: TypeAlias = Any
 
 
 class Field(Protocol):
-    """What linear algebra and words need. `power(n)` is t^n, n any integer."""
+    """What linear algebra, words and witnesses need. `kind`: the name of the field in a witness."""
 
+    kind: str
     zero: Element
     one: Element
-
-    def power(self, exponent: int) -> Element:
-        """t^exponent."""
+    t: Element
 
     def add(self, left: Element, right: Element) -> Element:
         """left + right."""
@@ -31,26 +30,29 @@ class Field(Protocol):
     def negative(self, element: Element) -> Element:
         """-element."""
 
+    def times(self, number: int, element: Element) -> Element:
+        """An integer multiple."""
+
     def inverse(self, element: Element) -> Element:
         """1 / element."""
 
     def cleared(self, vector: Sequence[Element]) -> list[Element]:
         """A multiple of the vector without denominators."""
 
+    def infinite_order(self, element: Element) -> bool:
+        """Whether an element that is not 0 is no root of unity."""
+
     def written(self, element: Element) -> tuple[Any, Any]:
         """The element for the witness."""
 
 
 class Rationals:
-    """Q with t an integer >= 2."""
+    """Q with t = 2."""
 
-    def __init__(self, t: int) -> None:
-        self.t = fmpq(t)
-        self.zero, self.one = fmpq(0), fmpq(1)
+    kind = "Q"
 
-    def power(self, exponent: int) -> Element:
-        """t^exponent."""
-        return self.t**exponent
+    def __init__(self) -> None:
+        self.zero, self.one, self.t = fmpq(0), fmpq(1), fmpq(2)
 
     def add(self, left: Element, right: Element) -> Element:
         """left + right."""
@@ -64,6 +66,10 @@ class Rationals:
         """-element."""
         return -element
 
+    def times(self, number: int, element: Element) -> Element:
+        """An integer multiple."""
+        return element * number
+
     def inverse(self, element: Element) -> Element:
         """1 / element."""
         return 1 / element
@@ -75,6 +81,10 @@ class Rationals:
             scale *= (x * scale).q
         return [x * scale for x in vector]
 
+    def infinite_order(self, element: Element) -> bool:
+        """Whether it is neither 1 nor -1."""
+        return abs(element) != 1
+
     def written(self, element: Element) -> tuple[int, int]:
         """(numerator, denominator)."""
         return int(element.p), int(element.q)
@@ -83,21 +93,12 @@ class Rationals:
 class NumberField:
     """Q[t]/(f), f an irreducible integer polynomial with f(0) != 0."""
 
+    kind = "Q[t]/(f)"
+
     def __init__(self, modulus: fmpz_poly) -> None:
         self.modulus = fmpq_poly(modulus)
         self.zero, self.one = fmpq_poly([0]), fmpq_poly([1])
-        self._t = fmpq_poly([0, 1]) % self.modulus
-        self._powers: dict[int, Element] = {}
-
-    def power(self, exponent: int) -> Element:
-        """t^exponent."""
-        if exponent not in self._powers:
-            base = self._t if exponent >= 0 else self.inverse(self._t)
-            value = self.one
-            for _ in range(abs(exponent)):
-                value = value * base % self.modulus
-            self._powers[exponent] = value
-        return self._powers[exponent]
+        self.t = fmpq_poly([0, 1]) % self.modulus
 
     def add(self, left: Element, right: Element) -> Element:
         """left + right."""
@@ -111,6 +112,10 @@ class NumberField:
         """-element."""
         return -element
 
+    def times(self, number: int, element: Element) -> Element:
+        """An integer multiple."""
+        return element * number
+
     def inverse(self, element: Element) -> Element:
         """1 / element, by the extended Euclidean algorithm."""
         unit, factor, _ = element.xgcd(self.modulus)
@@ -123,6 +128,16 @@ class NumberField:
             scale *= int((x * scale).denom())
         return [x * scale for x in vector]
 
+    def infinite_order(self, element: Element) -> bool:
+        """Whether no power is 1: a root of unity of order n has euler_phi(n) <= degree, and n <= 2 euler_phi(n)^2."""
+        degree = self.modulus.degree()
+        power = self.one
+        for _ in range(2 * degree * degree):
+            power = self.multiply(power, element)
+            if power == self.one:
+                return False
+        return True
+
     def written(self, element: Element) -> tuple[tuple[int, ...], int]:
         """(coefficients, denominator)."""
         return tuple(int(c) for c in element.numer().coeffs()), int(element.denom())
@@ -131,10 +146,11 @@ class NumberField:
 class RationalFunctions:
     """F_p(t); elements are pairs (numerator, denominator) in lowest terms."""
 
+    kind = "F_p(t)"
+
     def __init__(self, prime: int) -> None:
         self.prime = prime
-        self.zero = nmod_poly([0], prime), nmod_poly([1], prime)
-        self.one = nmod_poly([1], prime), nmod_poly([1], prime)
+        self.zero, self.one, self.t = ((nmod_poly(c, prime), nmod_poly([1], prime)) for c in ([0], [1], [0, 1]))
 
     def _lowest(self, above: nmod_poly, below: nmod_poly) -> Element:
         if not above:
@@ -144,11 +160,6 @@ class RationalFunctions:
         lead = nmod_poly([int(below[below.degree()])], self.prime)
         inverse = nmod_poly([pow(int(lead[0]), -1, self.prime)], self.prime)
         return above * inverse, below * inverse
-
-    def power(self, exponent: int) -> Element:
-        """t^exponent."""
-        monomial = nmod_poly([0] * abs(exponent) + [1], self.prime)
-        return (monomial, self.one[0]) if exponent >= 0 else (self.one[0], monomial)
 
     def add(self, left: Element, right: Element) -> Element:
         """left + right."""
@@ -162,6 +173,10 @@ class RationalFunctions:
         """-element."""
         return -element[0], element[1]
 
+    def times(self, number: int, element: Element) -> Element:
+        """An integer multiple."""
+        return (element[0] * number, element[1]) if number % self.prime else self.zero
+
     def inverse(self, element: Element) -> Element:
         """1 / element."""
         return self._lowest(element[1], element[0])
@@ -173,6 +188,10 @@ class RationalFunctions:
             below = self.multiply(x, scale)[1]
             scale = self.multiply(scale, (below, self.one[0]))
         return [self.multiply(x, scale) for x in vector]
+
+    def infinite_order(self, element: Element) -> bool:
+        """Whether it is not a constant."""
+        return max(part.degree() for part in element) > 0
 
     def written(self, element: Element) -> tuple[tuple[int, ...], tuple[int, ...]]:
         """(coefficients of the numerator, of the denominator)."""

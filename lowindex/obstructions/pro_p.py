@@ -8,6 +8,7 @@ is not virtually nilpotent.
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import dataclass
 
 from lowindex.algebra import Abelianization
 from lowindex.words import Word, cyclic_form
@@ -15,8 +16,15 @@ from lowindex.words import Word, cyclic_form
 PRIMES = (2, 3, 5, 7, 11, 13)
 
 
-def pro_p_prime(rank: int, relators: Sequence[Word], homology: Abelianization) -> int | None:
-    """A prime for which the inequality holds, the one with the largest margin; None when there is none."""
+@dataclass(frozen=True)
+class ProPObstruction:
+    """The inequality holds modulo `prime`."""
+
+    prime: int
+
+
+def pro_p_obstruction(rank: int, relators: Sequence[Word], homology: Abelianization) -> ProPObstruction | None:
+    """The prime for which the inequality holds with the largest margin; None when there is none."""
     count = len({cyclic_form(word) for word in relators} - {()})
     best: tuple[int, int] | None = None
     for p in PRIMES:
@@ -24,4 +32,4 @@ def pro_p_prime(rank: int, relators: Sequence[Word], homology: Abelianization) -
         margin = d * d - 4 * (count - rank + d)
         if d >= 2 and margin > 0 and (best is None or margin > best[0]):
             best = margin, p
-    return best[1] if best else None
+    return ProPObstruction(best[1]) if best else None

@@ -15,7 +15,7 @@ from typing import TypeAlias
 from lowindex.budget import Budget
 from lowindex.rewriting.derivation import Derivation, Factor
 from lowindex.rewriting.order import Order
-from lowindex.rewriting.relators import RelatorSet, solved
+from lowindex.rewriting.relators import RelatorSet, Unfinished, solved
 from lowindex.rewriting.rules import Rule
 from lowindex.rewriting.strings import cyclic_ends, encoded, free_reduced, inverted, joined, letter_of
 from lowindex.words import Word
@@ -25,6 +25,9 @@ Goal: TypeAlias = Hashable
 
 LONGEST_PAIR = 240
 """Pairs that would give a longer relator are not looked at."""
+
+LONGEST_RELATOR = 1500
+"""A completion in which a longer relator comes up has lost its way; recursive orderings let words explode."""
 
 LONGEST_OVERLAP = 120
 """Longer relators only rewrite; their overlaps (and the memory for them) are left out."""
@@ -177,11 +180,14 @@ class Completion(RelatorSet):
         behind: list[Factor] = []
         left_form = self.rules.reduce_logged(left, "", ahead)
         right_form = self.rules.reduce_logged(right, "", behind)
+        self.budget.spend(sum([len(u) for u, _, _ in ahead + behind]) // 20)
         # left = (ahead) left_form, right = (behind) right_form
         steps = [Factor(u, j, -e) for u, j, e in reversed(ahead)] + factors + behind
         word = joined(left_form, inverted(right_form))
         if not word:
             return
+        if len(word) > LONGEST_RELATOR:
+            raise Unfinished(f"a relator of more than {LONGEST_RELATOR} letters")
         number = self.derivation.derive(word, steps)
         if self.take(number) or not self.single.keys().isdisjoint(word):
             return

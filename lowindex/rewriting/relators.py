@@ -25,6 +25,9 @@ LONGEST_WORD = 20_000
 ROUNDS = 60
 """How often one relator is rotated and rewritten before it is taken as it is."""
 
+LONGEST_DETOUR = 3000
+"""It is taken as it is, too, when the conjugator and the number of rewriting steps have grown beyond this."""
+
 
 class Unfinished(Exception):
     """A set of relators could not be reduced within its budget, or words grew too long: it must not be used as a presentation."""
@@ -98,7 +101,7 @@ class RelatorSet:
             prefix = joined(prefix, word[:ends])
             word = word[ends : len(word) - ends]
             place = self.rules.place_of_match(word + word, len(word))
-            if place < 0:
+            if place < 0 or len(prefix) + len(factors) > LONGEST_DETOUR:
                 break
             prefix = joined(prefix, word[:place])
             word = self.rules.reduce_logged(word[place:] + word[:place], prefix, factors)
@@ -119,6 +122,7 @@ class RelatorSet:
     def _conjugated(self, equation: int, word: str, prefix: str, factors: list[Factor]) -> int:
         """Log `word`, where  words[equation] = (factors) · prefix word prefix^-1."""
         back = inverted(prefix)
+        self.budget.spend(sum([len(back) + len(u) for u, _, _ in factors]) // 20)
         steps = [Factor(joined(back, u), j, -e) for u, j, e in reversed(factors)]
         return self.derivation.derive(word, [*steps, Factor(back, equation, 1)])
 

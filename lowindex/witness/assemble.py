@@ -6,7 +6,7 @@ from typing import TypeAlias, cast
 
 from lowindex.cosets import CosetTable, SubgroupPresentation
 from lowindex.nilpotent import ChainProof, conjugate_pairs
-from lowindex.obstructions import AffineObstruction
+from lowindex.obstructions import AffineObstruction, Obstruction, ProPObstruction
 from lowindex.witness.claims import (
     Affine,
     Chain,
@@ -47,20 +47,17 @@ def virtually_nilpotent(
 def not_virtually_nilpotent(
     presentation: Presentation,
     table: CosetTable,
-    obstruction: AffineObstruction | int | None,
+    obstruction: Obstruction,
     *,
     effort: int,
     version: str,
 ) -> Witness:
-    """The witness that the stabiliser of point 0 carries an obstruction: an affine one, a prime for the pro-p test, or (None) small
-    cancellation."""
+    """The witness that the stabiliser of point 0 carries an obstruction."""
     claim: Affine | ProP | SmallCancellation
-    if obstruction is None:
-        claim = SmallCancellation()
-    elif isinstance(obstruction, int):
-        claim = ProP(obstruction)
-    else:
+    if isinstance(obstruction, AffineObstruction):
         claim = _affine(obstruction)
+    else:
+        claim = ProP(obstruction.prime) if isinstance(obstruction, ProPObstruction) else SmallCancellation()
     subject = Subject(presentation, tuple(map(tuple, table.permutations)), version, effort)
     return write(NotVirtuallyNilpotent(subject, claim, table.index))
 

@@ -1,7 +1,7 @@
 """Nilpotent and nilpotent-by-finite groups. Degrees: Bass 1972, Guivarc'h 1973 (formula L; values C)."""
 
 from collections.abc import Sequence
-from itertools import product
+from itertools import combinations, product
 
 HEISENBERG = "⟨a, b | [a,b,a], [a,b,b]⟩"
 
@@ -73,10 +73,17 @@ def heisenberg_by(k: int) -> str:
 
 def torus_bundle(matrix: Sequence[Sequence[int]]) -> str:
     """Z^n x|_A Z: t x_i t^-1 is the word of row i of A."""
-    size = len(matrix)
+    return abelian_by_abelian(matrix)
+
+
+def abelian_by_abelian(*matrices: Sequence[Sequence[int]]) -> str:
+    """Z^n x| Z^k for k <= 3 commuting matrices A: t x_i t^-1 is the word of row i of A."""
+    size = len(matrices[0])
     names = [f"x{i + 1}" for i in range(size)]
-    relators = [f"[{names[i]},{names[j]}]" for i in range(size) for j in range(i + 1, size)]
-    for name, row in zip(names, matrix, strict=True):
-        image = " ".join(f"{other}^{n}" for other, n in zip(names, row, strict=True) if n) or "1"
-        relators.append(f"t {name} t^-1 = {image}")
-    return f"⟨{', '.join([*names, 't'])} | {', '.join(relators)}⟩"
+    above = ["t", "s", "r"][: len(matrices)]
+    relators = [f"[{u},{v}]" for group in (names, above) for u, v in combinations(group, 2)]
+    for letter, matrix in zip(above, matrices, strict=True):
+        for name, row in zip(names, matrix, strict=True):
+            image = " ".join(f"{other}^{n}" for other, n in zip(names, row, strict=True) if n) or "1"
+            relators.append(f"{letter} {name} {letter}^-1 = {image}")
+    return f"⟨{', '.join([*names, *above])} | {', '.join(relators)}⟩"
