@@ -12,7 +12,7 @@ import lowindex
 from lowindex.budget import Budget
 from lowindex.checker import Refused, check
 from lowindex.cosets import CosetTable, enumerate_cosets
-from lowindex.decision.breadth import Breadth
+from lowindex.decision.breadth import Classes, breadth, covers
 from lowindex.decision.descent import descend
 from lowindex.decision.finite import cyclic_visits, regular_table
 from lowindex.decision.plan import Plan, Stage, plan_for
@@ -86,9 +86,12 @@ class _Hunt:
         elif stage.lane == "descent":
             self._try(descend(self.whole, reach=stage.reach, budget=budget), "descent")
         else:
-            lane = Breadth(self.whole, reach=stage.reach, budget=budget)
-            self._try(lane.trials(), "breadth")
-            self.searched |= {"complete_to_index": lane.complete_to, "classes": lane.classes, "nodes": lane.nodes}
+            classes = Classes(self.whole, reach=stage.reach, budget=budget)
+            self._try((breadth if stage.lane == "breadth" else covers)(classes), stage.lane)
+            if stage.lane == "covers":
+                self.searched["covers_to_index"] = classes.complete_to
+            else:
+                self.searched |= {"complete_to_index": classes.complete_to, "classes": classes.classes, "nodes": classes.nodes}
 
     def _given(self) -> None:
         """Start from the subgroup that the caller has in mind, when its cosets can be enumerated."""

@@ -15,8 +15,8 @@ EFFORTS = range(1, 10)
 
 @dataclass(frozen=True)
 class Stage:
-    """`lane`: "finite", "descent" or "breadth". `share`: percent of the work of the whole hunt. `reach`: cosets (finite), index of the
-    subgroup reached (descent), index searched (breadth)."""
+    """`lane`: "finite", "descent", "covers" or "breadth". `share`: percent of the work of the whole hunt. `reach`: cosets (finite), index
+    of the subgroup reached (descent), index searched (covers, breadth)."""
 
     lane: str
     share: int
@@ -44,8 +44,9 @@ def plan_for(effort: int) -> Plan:
         max_class=5 + effort,
         stages=(
             Stage("finite", 10, min(cosets, 3000)),
-            Stage("descent", 45, min(20_000, 200 * 2**effort)),
+            Stage("descent", 40, min(20_000, 200 * 2**effort)),
+            Stage("covers", 15, 6 + 4 * effort),
             Stage("finite", 15, cosets),
-            Stage("breadth", 30, 6 + 4 * effort),
+            Stage("breadth", 20, 6 + 4 * effort),
         ),
     )
