@@ -1,8 +1,8 @@
 """Lanes over all classes of subgroups by increasing index.
 
 Breadth tries to prove them nilpotent: it finds witnesses of smaller index that are not normal. Covers looks for obstructions on them and
-on regular covers below them: on the core of every subgroup (the kernel of a homomorphism into a symmetric group; among them are the kernels of
-maps onto small simple groups, which open perfect groups), and, when H_1(H) is finite, on the kernels of H -> H_1(H; F_p).
+on regular covers below them: on the core of every subgroup (the kernel of a homomorphism into a symmetric group; among them are the
+kernels of maps onto small simple groups, which open perfect groups), and, when H_1(H) is finite, on the kernels of H -> H_1(H; F_p).
 """
 
 from __future__ import annotations

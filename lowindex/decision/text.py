@@ -19,6 +19,7 @@ def describe(group: Presentation, verdict: Verdict, witness_file: str | None = N
     lines.append(f"  index      {verdict.index}")
     if verdict.verdict == NO:
         lines.append("  witness    accepted by the independent checker" + (f": {witness_file}" if witness_file else ""))
+        lines.append("  explained  by lowindex export WITNESS: the theorem used, the matrices, what to check by hand")
         return "\n".join(lines)
     lines.append(f"  subgroup   {_generators(group, verdict)}")
     if verdict.finite_order is not None:

@@ -6,7 +6,7 @@ multiplier m of infinite order, so that iterated commutators w (m^k - 1)^c never
 Geom. 2 (1968) 447-449; J. A. Wolf, same volume, 421-446). For a map phi onto Z and m = t^phi another solution exists
 
     over Q with t = 2       when J has rank < n - 1 over Q(t),
-    over Q[t]/(f)           for an irreducible factor f of the Alexander polynomial, neither t nor cyclotomic,
+    over Q or Q[t]/(f)      for an irreducible factor f of the Alexander polynomial, neither t nor cyclotomic,
     over F_p(t)             for a prime p that divides its content;
 
 the isolated characters of isolated.py are tried after these.
@@ -17,7 +17,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 
-from flint import fmpz_poly
+from flint import fmpq, fmpz_poly
 
 from lowindex.algebra import Abelianization
 from lowindex.budget import Budget
@@ -94,19 +94,22 @@ def _characters(rank: int, relators: Sequence[Word], homology: Abelianization, b
     yield from isolated_characters(rank, relators, above, budget=budget)
 
 
-def _fields_of(delta: fmpz_poly) -> Iterator[NumberField | RationalFunctions]:
+def _fields_of(delta: fmpz_poly) -> Iterator[Rationals | NumberField | RationalFunctions]:
     """The fields that a polynomial other than 0 names."""
     content, factors = delta.factor()
     for factor, _ in sorted(factors, key=lambda item: item[0].degree()):
         if 1 <= factor.degree() <= HIGHEST_DEGREE and factor[0] and not is_cyclotomic(factor):
-            yield NumberField(factor if factor[factor.degree()] > 0 else -factor)
-    content = abs(int(content))
+            if factor.degree() == 1:
+                yield Rationals(fmpq(-factor[0], factor[1]))
+            else:
+                yield NumberField(factor if factor[factor.degree()] > 0 else -factor)
+    left = abs(int(content))
     for p in range(2, LARGEST_CONTENT_PRIME):
-        if content % p == 0:
+        if left % p == 0:
             yield RationalFunctions(p)
-            while content % p == 0:
-                content //= p
-        if content == 1:
+            while left % p == 0:
+                left //= p
+        if left == 1:
             return
 
 

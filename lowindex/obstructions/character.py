@@ -59,8 +59,8 @@ class Character:
         value = field.zero
         for (k, height), times in fox_terms(word, self.heights).items():
             value = field.add(value, field.multiply(field.times(times, self.at(height)), translations[k]))
-        height = [0] * len(self.heights[0])
+        total = [0] * len(self.heights[0])
         for letter in word:
             sign = 1 if letter > 0 else -1
-            height = [x + sign * y for x, y in zip(height, self.heights[abs(letter) - 1], strict=True)]
-        return tuple(height), value
+            total = [x + sign * y for x, y in zip(total, self.heights[abs(letter) - 1], strict=True)]
+        return tuple(total), value

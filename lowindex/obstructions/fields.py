@@ -47,12 +47,12 @@ class Field(Protocol):
 
 
 class Rationals:
-    """Q with t = 2."""
+    """Q with a rational t, 2 unless told otherwise."""
 
     kind = "Q"
 
-    def __init__(self) -> None:
-        self.zero, self.one, self.t = fmpq(0), fmpq(1), fmpq(2)
+    def __init__(self, t: fmpq | int = 2) -> None:
+        self.zero, self.one, self.t = fmpq(0), fmpq(1), fmpq(t)
 
     def add(self, left: Element, right: Element) -> Element:
         """left + right."""
@@ -83,7 +83,7 @@ class Rationals:
 
     def infinite_order(self, element: Element) -> bool:
         """Whether it is neither 1 nor -1."""
-        return abs(element) != 1
+        return bool(abs(element) != 1)
 
     def written(self, element: Element) -> tuple[int, int]:
         """(numerator, denominator)."""
@@ -191,7 +191,7 @@ class RationalFunctions:
 
     def infinite_order(self, element: Element) -> bool:
         """Whether it is not a constant."""
-        return max(part.degree() for part in element) > 0
+        return bool(max(part.degree() for part in element) > 0)
 
     def written(self, element: Element) -> tuple[tuple[int, ...], tuple[int, ...]]:
         """(coefficients of the numerator, of the denominator)."""

@@ -1,9 +1,9 @@
 """Isolated characters: multipliers in several variables t_1, ..., t_b, all of them in one number field.
 
-Z^3 x| Z^2 with two independent units of a cubic field is not virtually nilpotent, but no map onto Z shows it. The characters at which the Fox
-Jacobian J has more solutions than the principal ones form a variety; a Groebner basis in lexicographic order, with one more variable
-h = t_1 + 3 t_2 + 5 t_3 ... that tells its points apart, gives the isolated ones as t_i = g_i(h), f(h) = 0. Where the variety has dimension 1, its
-points with some t_i = 2 are taken. What is found here is only proposed; the null space of J decides.
+Z^3 x| Z^2 with two independent units of a cubic field is not virtually nilpotent, but no map onto Z shows it. The characters at which
+the Fox Jacobian J has more solutions than the principal ones form a variety; a Groebner basis in lexicographic order, with one more
+variable h = t_1 + 3 t_2 + 5 t_3 ... that tells its points apart, gives the isolated ones as t_i = g_i(h), f(h) = 0. Where the variety
+has dimension 1, its points with some t_i = 2 are taken. What is found here is only proposed; the null space of J decides.
 """
 
 from __future__ import annotations
@@ -16,7 +16,7 @@ from flint import Ordering, fmpq_poly, fmpz_mpoly_ctx, fmpz_mpoly_vec, fmpz_poly
 from lowindex.algebra import fox_terms
 from lowindex.budget import Budget
 from lowindex.obstructions.character import Character
-from lowindex.obstructions.fields import NumberField
+from lowindex.obstructions.fields import NumberField, Rationals
 from lowindex.words import Word
 
 Polynomial = Any
@@ -49,8 +49,10 @@ def isolated_characters(rank: int, relators: Sequence[Word], heights: Sequence[H
             budget.spend(COST)
             system = _System(rank, relators, heights, anchor)
             for modulus, values in system.points(special):
-                field = NumberField(modulus)
-                yield Character(field, [value % field.modulus for value in values], heights)
+                if modulus.degree() == 1:
+                    yield Character(Rationals(), [value[0] for value in values], heights)
+                else:
+                    yield Character(NumberField(modulus), values, heights)
 
 
 class _System:
@@ -99,8 +101,8 @@ class _System:
                     yield (factor if factor[factor.degree()] > 0 else -factor), values
 
     def _values(self, basis: list[Polynomial], factor: fmpz_poly) -> list[fmpq_poly] | None:
-        """t_i as polynomials in h over Q[h]/(factor), the last one first: where its polynomial c t^k + c' t^(k-1) + ... has degree k, h tells
-        the points apart and t = -c' / (k c)."""
+        """t_i as polynomials in h over Q[h]/(factor), the last one first. As h tells the points apart, its polynomial over the later ones,
+        c t^k + c' t^(k-1) + ..., has one root, and t = -c' / (k c)."""
         number = NumberField(factor)
         known = [*basis, sum((int(c) * self.h**i for i, c in enumerate(factor.coeffs())), self.context.constant(0))]
         values: list[fmpq_poly] = []
@@ -121,6 +123,7 @@ class _System:
         return values
 
     def _basis(self, equations: list[Polynomial]) -> list[Polynomial] | None:
+        basis: Any
         basis, complete = fmpz_mpoly_vec(equations, self.context).buchberger_naive(limits=LIMITS)
         return list(basis.autoreduction()) if complete else None
 

@@ -1,8 +1,8 @@
 """Maps of H onto Z that are worth a try.
 
 A map onto Z whose multiplier t has more than the principal crossed homomorphisms for *every* t kills whatever commutes with all of H
-modulo the third term of the lower central series, rationally (think of Z x F, where it kills Z). So the maps that vanish on the radical of the
-cup product come first: the radical is the set of z in H_1(H; Q) with [z, x] = 0 in gamma_2 / gamma_3 over Q for all x, and that
+modulo the third term of the lower central series, rationally (think of Z x F, where it kills Z). So the maps that vanish on the radical
+of the cup product come first: the radical is the set of z in H_1(H; Q) with [z, x] = 0 in gamma_2 / gamma_3 over Q for all x, and that
 quotient is the exterior square of H_1 modulo the quadratic parts of the relators (D. Sullivan, Topology 14 (1975) 275-277).
 """
 

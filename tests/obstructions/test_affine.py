@@ -47,8 +47,8 @@ CUBIC = nilpotent.abelian_by_abelian([[0, 1, 0], [0, 0, 1], [-1, 3, 0]], [[-1, 1
 """Z^3 x| Z^2: multiplication by the units u and u - 1 of the ring Z[u], u^3 = 3 u - 1 (totally real: discriminant 81)."""
 
 KINDS = {
-    "⟨a, t | t a t^-1 = a^2⟩": "Q[t]/(f)",
-    "⟨a, t | t a^2 t^-1 = a^3⟩": "Q[t]/(f)",
+    "⟨a, t | t a t^-1 = a^2⟩": "Q",
+    "⟨a, t | t a^2 t^-1 = a^3⟩": "Q",
     "⟨a, b | ⟩": "Q",
     "⟨a, b, c | [a,b]⟩": "Q",
     "⟨x, y, t | [x,y], t x t^-1 = x^2 y, t y t^-1 = x y⟩": "Q[t]/(f)",
@@ -59,8 +59,8 @@ KINDS = {
     "⟨a, t | t a^3 t^-1 = a^3⟩": "F_p(t)",
     "⟨a, t | t a^2 t^-1 = a^-2⟩": "F_p(t)",
     CUBIC: "Q[t]/(f)",
-    # s acts as t + 1: the characters form a curve, its points with t = 2 lie in Q, written as Q[h]/(h - c)
-    "⟨a, s, t | [s,t], [a, a^t], a^s = a a^t⟩": "Q[t]/(f)",
+    # s acts as t + 1: the characters form a curve, its points with t = 2 lie in Q
+    "⟨a, s, t | [s,t], [a, a^t], a^s = a a^t⟩": "Q",
 }
 
 

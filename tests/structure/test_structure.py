@@ -25,7 +25,7 @@ LAYERS = [
     {"quotients"},
     {"nilpotent", "obstructions"},
     {"witness"},
-    {"decision"},
+    {"decision", "export"},
     {"cli"},
 ]
 LEVEL = {room: level for level, rooms in enumerate(LAYERS) for room in rooms}

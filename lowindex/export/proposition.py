@@ -1,0 +1,35 @@
+"""A witness as a proposition with proof, in plain text or LaTeX."""
+
+from __future__ import annotations
+
+from lowindex.export import nilpotent, obstruction
+from lowindex.export.document import Block, Paragraph, as_latex, as_text
+from lowindex.export.reading import Reading
+
+CLAIMS = {"virtually nilpotent": nilpotent.proposition, "not virtually nilpotent": obstruction.proposition}
+
+
+def blocks(reading: Reading) -> list[Block]:
+    """The proposition, its proof, and where it comes from."""
+    made_by = reading.content["made by"]
+    digest = " ".join(reading.digest[i : i + 16] for i in range(0, 64, 16))
+    origin = Paragraph(
+        f"This page was made from a witness with the SHA-256 digest {digest}, written by lowindex {made_by['version']} at effort "
+        f"{made_by['effort']} and accepted by its independent checker."
+    )
+    return [*CLAIMS[reading.claim](reading), origin]
+
+
+def text(reading: Reading) -> str:
+    """Plain text."""
+    return as_text(_title(reading), blocks(reading))
+
+
+def latex(reading: Reading) -> str:
+    """A LaTeX document."""
+    return as_latex(_title(reading), blocks(reading))
+
+
+def _title(reading: Reading) -> str:
+    which = "a" if reading.claim == "virtually nilpotent" else "no"
+    return f"A group that has {which} nilpotent subgroup of finite index"
