@@ -44,9 +44,9 @@ def plan_for(effort: int) -> Plan:
         max_class=5 + effort,
         stages=(
             Stage("finite", 10, min(cosets, 3000)),
-            Stage("descent", 40, min(20_000, 200 * 2**effort)),
+            Stage("descent", 45, min(20_000, 200 * 2**effort)),
             Stage("covers", 15, 6 + 4 * effort),
             Stage("finite", 15, cosets),
-            Stage("breadth", 20, 6 + 4 * effort),
+            Stage("breadth", 15, 6 + 4 * effort),
         ),
     )
