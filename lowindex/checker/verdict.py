@@ -2,26 +2,34 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from typing import Any
 
-from . import not_virtually_nilpotent, virtually_nilpotent
-from .parse import fields, integer, listing, parse, string, word
+from . import different, not_virtually_nilpotent, virtually_nilpotent
+from . import word as of_words
+from .group import read_group
+from .parse import fields, integer, parse, string
 from .refused import Refused, require
 from .table import Table
-from .words import Word, digest, group_text, reduced
+from .words import digest, reduced
 
 FORMAT = "lowindex witness 1"
 
 CLAIMS: dict[str, tuple[tuple[str, ...], Callable[[dict[str, Any], Table], dict[str, Any]]]] = {
     "virtually nilpotent": (virtually_nilpotent.KEYS, virtually_nilpotent.check),
     "not virtually nilpotent": (not_virtually_nilpotent.KEYS, not_virtually_nilpotent.check),
+    "word trivial": (of_words.TRIVIAL_KEYS, of_words.check_trivial),
+    "word not trivial": (of_words.NONTRIVIAL_KEYS, of_words.check_nontrivial),
+    "different groups": (different.KEYS, different.check),
 }
 """For each claim the keys that its witnesses have of their own, and the function that checks them and computes the summary."""
 
-_NAME = re.compile(r"[^\W\d_][\w'′]*")
+SENTENCES = {
+    "word trivial": "in {group} the word of {length} letters is trivial",
+    "word not trivial": "in {group} the word of {length} letters is not trivial: it moves one of {degree} points",
+    "different groups": "{group} differs from the other group in its subgroups of index {index}, if both lists of classes are complete",
+}
 
 LONGEST_VERSION = 100
 
@@ -35,6 +43,8 @@ class Report:
     summary: dict[str, Any]
 
     def __str__(self) -> str:
+        if self.claim in SENTENCES:
+            return SENTENCES[self.claim].format(group=self.group, **self.summary)
         bound = "class at most" if self.summary.get("hirsch_length", 0) is None else "class"
         names = {"class": bound, "hirsch_length": "Hirsch length", "growth_degree": "growth degree", "finite_order": "order"}
         facts = (f"{names.get(key, key)} {value}" for key, value in self.summary.items() if value is not None)
@@ -50,7 +60,7 @@ def check(text: str, *, presentation: tuple[Sequence[str], Sequence[Sequence[int
     require(type(claim) is str and claim in CLAIMS, f"unknown claim {str(claim)[:60]!r}")
     keys, check_claim = CLAIMS[str(claim)]
     fields(value, ("format", "claim", "group", "table", *keys, "summary", "made by"), "the witness")
-    names, relators, printed = _group(value["group"])
+    names, relators, printed = read_group(value["group"], "group")
     if presentation is not None:
         given = [letters for letters in map(reduced, presentation[1]) if letters]
         require((names, relators) == (list(presentation[0]), given), "the witness is about another presentation")
@@ -61,20 +71,6 @@ def check(text: str, *, presentation: tuple[Sequence[str], Sequence[Sequence[int
         raise Refused("the stack of calls has no room left for the chain") from None
     _check_summary(value["summary"], summary)
     return Report(str(claim), printed, summary)
-
-
-def _group(value: Any) -> tuple[list[str], list[Word], str]:
-    names, relators, text = fields(value, ("names", "relators", "text"), "group")
-    for k, name in enumerate(listing(names, "group.names"), 1):
-        where = f"the name of generator {k}"
-        require(_NAME.fullmatch(string(name, where)), f"{where} is not a letter and letters, digits, _ or '")
-    require(len(set(names)) == len(names), "two generators have the same name")
-    words = [word(item, f"relator {k}", len(names)) for k, item in enumerate(listing(relators, "group.relators"))]
-    for k, item in enumerate(words):
-        require(item and item == reduced(item), f"relator {k} is empty or not freely reduced")
-    printed = group_text(names, words)
-    require(text == printed, "group.text is not the text of group.relators")
-    return names, words, printed
 
 
 def _check_provenance(value: Any, printed: str) -> None:

@@ -7,8 +7,7 @@ import json
 
 from lowindex.checker import Refused, check
 from lowindex.cli.console import show
-from lowindex.cli.source import read_source, read_text
-from lowindex.errors import InputError
+from lowindex.cli.source import read_one, read_text
 
 EXAMPLE = """example:
   lowindex check p4.json --for "⟨a, b | a^4, b^2, (a b)^4⟩"
@@ -35,10 +34,8 @@ def run(arguments: argparse.Namespace) -> int:
     """Check every witness; the exit code."""
     bound = None
     if arguments.source is not None:
-        groups = read_source(arguments.source)
-        if len(groups) != 1:
-            raise InputError(f"--for takes one presentation, not {len(groups)}")
-        bound = list(groups[0].names), list(groups[0].relators)
+        group = read_one(arguments.source)
+        bound = list(group.names), list(group.relators)
     code = 0
     for path in arguments.witness:
         text = read_text(path)

@@ -29,9 +29,9 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
     parser = commands.add_parser(
         "hunt",
         help="decide whether a group has a nilpotent subgroup of finite index",
-        description="Looks for a nilpotent subgroup of finite index and proves that it is one, and for an obstruction on a subgroup of finite "
-        "index. The result is announced only after the independent checker has accepted the witness. What can be decided in principle, and "
-        "what cannot, stands in the README (groups with too few finite quotients stay undecided, such as Higman's group).",
+        description="Looks for a nilpotent subgroup of finite index and proves that it is one, and for an obstruction on a subgroup of "
+        "finite index. The result is announced only after the independent checker has accepted the witness. What can be decided in "
+        "principle, and what cannot, stands in the README (groups with too few finite quotients stay undecided, such as Higman's group).",
         epilog=EXAMPLE,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )

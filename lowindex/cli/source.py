@@ -22,6 +22,14 @@ def read_source(source: str) -> list[Presentation]:
     return parse_file(read_text(source))
 
 
+def read_one(source: str) -> Presentation:
+    """The one presentation that a SOURCE names; InputError when there are more."""
+    groups = read_source(source)
+    if len(groups) != 1:
+        raise InputError(f"expected one presentation, found {len(groups)}")
+    return groups[0]
+
+
 def read_text(path: str) -> str:
     """The text of a regular file. InputError when it cannot be read."""
     try:

@@ -4,11 +4,18 @@ from __future__ import annotations
 
 import argparse
 import json
-from typing import Any
+from collections.abc import Iterable
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
 
-from lowindex.cli.console import show
+from lowindex.cli.console import remark, show
 from lowindex.cli.source import read_source
+from lowindex.errors import InputError
 from lowindex.words import Presentation
+
+if TYPE_CHECKING:
+    from lowindex.cosets import CosetTable
+    from lowindex.search import SubgroupClass
 
 
 def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
@@ -25,6 +32,8 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
     parser.add_argument("--count", action="store_true", help="only numbers, by index")
     parser.add_argument("--normal", action="store_true", help="only normal subgroups")
     parser.add_argument("--presentations", action="store_true", help="with a presentation of every subgroup")
+    parser.add_argument("--graphs", metavar="FOLDER", help="write the Schreier graph of every class into FOLDER")
+    parser.add_argument("--graph-format", choices=("svg", "graphml", "dot"), default="svg", help="of these files (default svg)")
     parser.add_argument("--json", action="store_true", help="JSON: one object with --count, else one object a class")
     parser.set_defaults(run=run)
 
@@ -60,16 +69,42 @@ def _count(group: Presentation, arguments: argparse.Namespace) -> None:
     show(f"complete to index {counts.complete_to} ({counts.nodes} nodes)")
 
 
+def _write_graph(table: CosetTable, group: Presentation, number: int, arguments: argparse.Namespace) -> None:
+    from lowindex.cosets import graph_text
+
+    text = graph_text(table, group.names, arguments.graph_format)
+    path = Path(arguments.graphs) / f"class-{number}-index-{table.index}.{arguments.graph_format}"
+    try:
+        path.parent.mkdir(parents=True, exist_ok=True)
+        path.write_text(text, encoding="utf-8")
+    except OSError as error:
+        raise InputError(f"{str(path)!r} cannot be written: {error.strerror}; name another folder") from None
+
+
+def _classes(group: Presentation, arguments: argparse.Namespace) -> Iterable[SubgroupClass]:
+    """The classes by index; normal subgroups by layers of chief factors, which reach much farther."""
+    from lowindex.budget import Budget
+    from lowindex.quotients import LARGEST_NORMAL_INDEX, NormalSubgroups
+    from lowindex.search import SubgroupClass, SubgroupSearch
+
+    if not arguments.normal or arguments.index > LARGEST_NORMAL_INDEX:
+        search = SubgroupSearch(group, arguments.index, budget=Budget())
+        found = sorted(search, key=lambda item: (item.index, item.table.lists))
+        yield from (item for item in found if item.normal or not arguments.normal)
+        return
+    normal = NormalSubgroups(group, arguments.index, Budget())
+    yield from (SubgroupClass(table, 1) for table in normal)
+    if normal.complete_to < arguments.index:
+        remark(f"all normal subgroups of index up to {normal.complete_to} were found; above, some may be missing")
+
+
 def _list(group: Presentation, arguments: argparse.Namespace) -> None:
     from lowindex.algebra import abelianization
-    from lowindex.budget import Budget
     from lowindex.cosets import subgroup_presentation
-    from lowindex.search import SubgroupSearch
 
-    search = SubgroupSearch(group, arguments.index, budget=Budget())
-    for found in sorted(search, key=lambda item: (item.index, item.table.lists)):
-        if arguments.normal and not found.normal:
-            continue
+    for number, found in enumerate(_classes(group, arguments), 1):
+        if arguments.graphs:
+            _write_graph(found.table, group, number, arguments)
         subgroup = subgroup_presentation(group, found.table)
         homology = abelianization(subgroup.rank, subgroup.relators)
         item: dict[str, Any] = {

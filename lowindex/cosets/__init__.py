@@ -1,7 +1,7 @@
 """Coset tables, Schreier trees, presentations of subgroups of finite index, coset enumeration."""
 
 from lowindex.cosets.enumeration import Enumeration, EnumerationLog, enumerate_cosets, logged_enumeration
-from lowindex.cosets.graph import schreier_graph
+from lowindex.cosets.graph import graph_text, schreier_graph
 from lowindex.cosets.operations import (
     abelian_table,
     compose,
@@ -26,6 +26,7 @@ __all__ = [
     "compose",
     "core",
     "enumerate_cosets",
+    "graph_text",
     "intersection",
     "logged_enumeration",
     "pull_back",

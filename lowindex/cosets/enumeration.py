@@ -61,6 +61,8 @@ def enumerate_cosets(
     """
     if strategy is not None and strategy not in STRATEGIES:
         raise InputError(f"strategy must be one of {', '.join(STRATEGIES)}, not {strategy!r}")
+    if presentation.rank == 0:
+        return Enumeration(CosetTable.from_permutations([]), 1, 1, strategy or STRATEGIES[0], 0)
     words = list(subgroup)
     runs = [_Run(presentation, words, name, max_cosets) for name in STRATEGIES if strategy in (None, name)]
     work, share = 0, SLICE // 8
@@ -215,6 +217,8 @@ class EnumerationLog:
 def logged_enumeration(rank: int, relators: Sequence[Word], *, max_cosets: int, budget: Budget) -> EnumerationLog | None:
     """Enumerate over the trivial subgroup and keep the log; None when that does not close within the budget and the cosets. Relators
     must be cyclically reduced."""
+    if rank == 0:
+        return None
     run = _Run(Presentation.from_relators(rank, relators), (), "felsch", max_cosets)
     run.conjugates, run.first = _conjugates(relators, 2 * rank)
     max_cosets = min(max_cosets, MOST_LOGGED)

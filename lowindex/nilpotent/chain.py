@@ -92,6 +92,8 @@ def prove_nilpotent(rank: int, relators: Sequence[Word], *, max_class: int, budg
     """
     attempts: list[_Attempt] = []
     for prepare in (_guided, _collected, _eliminated, _abbreviated, _as_given):
+        if budget.exhausted:
+            return None
         attempt = _Attempt.made(rank, relators, prepare, max_class, budget)
         if attempt is None:
             continue

@@ -27,7 +27,7 @@ MOST_STEPS = 1_000_000
 class NilpotentPresentation:
     """`weights`: nondecreasing from 1. `orders`: 0 for infinite, else >= 2. `powers[j]`: the vector of a_j^orders[j]. `conjugates[j, i]`,
     j > i: the vector of a_j^(a_i) where the two do not commute. `definitions[k]`: ("generator", g) when a_k is the image of input
-    generator g (from 1), ("commutator", j, i) when a_k = [a_j, a_i].
+    generator g (from 1), ("commutator", j, i) when a_k = [a_j, a_i]. `unlimited`: collection never gives up.
     """
 
     weights: Vector
@@ -35,6 +35,7 @@ class NilpotentPresentation:
     powers: Mapping[int, Vector]
     conjugates: Mapping[tuple[int, int], Vector]
     definitions: tuple[Definition, ...] = ()
+    unlimited: bool = False
     _images: dict[tuple[int, int, int], Vector] = field(default_factory=dict, compare=False, repr=False)
     _moves: dict[int, frozenset[int]] = field(default_factory=dict, compare=False, repr=False)
     _steps: list[int] = field(default_factory=lambda: [0], compare=False, repr=False)
@@ -76,7 +77,7 @@ class NilpotentPresentation:
     def _append(self, vector: Vector, k: int, exponent: int) -> Vector:
         """vector · a_k^exponent."""
         self._steps[0] += 1
-        if self._steps[0] > MOST_STEPS:
+        if self._steps[0] > MOST_STEPS and not self.unlimited:
             raise OverflowError(f"collection needed more than {MOST_STEPS} steps")
         moved = self._moved_by(k)
         tail = vector[k + 1 :]

@@ -64,11 +64,11 @@ def elementary_table(rank: int, relators: Sequence[Word], p: int, *, most: int =
     dimension = mod_p_rank(rank, relators, p)
     if not dimension or p**dimension > most:
         return None
-    coordinates = _cokernel(relation_matrix(rank, relators), rank, p)
+    coordinates = cokernel(relation_matrix(rank, relators), rank, p)
     return abelian_table([tuple(row) for row in coordinates], [p] * dimension, most)
 
 
-def _cokernel(rows: list[list[int]], size: int, q: int) -> list[list[int]]:
+def cokernel(rows: list[list[int]], size: int, q: int) -> list[list[int]]:
     """The image of each of the `size` unit vectors in F_q^size modulo the rows, in coordinates of the columns without pivot."""
     pivots: dict[int, list[int]] = {}
     if rows:
@@ -99,7 +99,7 @@ def _cuts(group: Presentation, kernel: SubgroupPresentation, p: int, budget: Bud
 def _module(group: Presentation, kernel: SubgroupPresentation, q: int) -> _Module | None:
     """V for the kernel of a regular table; None when V is 0 or too large."""
     rank = kernel.rank
-    coordinates = _cokernel(relation_matrix(rank, kernel.relators), rank, q)
+    coordinates = cokernel(relation_matrix(rank, kernel.relators), rank, q)
     dimension = len(coordinates[0]) if coordinates else 0
     if not 0 < dimension <= LARGEST_MODULE:
         return None
@@ -132,11 +132,11 @@ def _acting(module: _Module, most: int) -> CosetTable | None:
         if count >= d:
             vectors = [tuple(row) for row in identity]
         table = vector_table(vectors, module.matrices, q, most)
-        if table is not None and _is_regular(table):
+        if table is not None and is_regular(table):
             return table
     return None
 
 
-def _is_regular(table: CosetTable) -> bool:
+def is_regular(table: CosetTable) -> bool:
     """Whether a word that fixes point 0 fixes every point."""
     return all(table.satisfies([word]) for word in SchreierTree(table).generators)

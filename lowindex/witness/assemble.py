@@ -2,14 +2,17 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from typing import TypeAlias, cast
 
 from lowindex.cosets import CosetTable, SubgroupPresentation
 from lowindex.nilpotent import ChainProof, conjugate_pairs
 from lowindex.obstructions import AffineObstruction, Obstruction, ProPObstruction
+from lowindex.rewriting import Proof
 from lowindex.witness.claims import (
     Affine,
     Chain,
+    DifferentGroups,
     Element,
     Goals,
     NilpotentSummary,
@@ -21,9 +24,11 @@ from lowindex.witness.claims import (
     SmallCancellation,
     Subject,
     VirtuallyNilpotent,
+    WordNotTrivial,
+    WordTrivial,
 )
 from lowindex.witness.writer import Witness, write
-from lowindex.words import Presentation
+from lowindex.words import Presentation, Word
 
 Elements: TypeAlias = tuple[Element, ...]
 
@@ -60,6 +65,30 @@ def not_virtually_nilpotent(
         claim = ProP(obstruction.prime) if isinstance(obstruction, ProPObstruction) else SmallCancellation()
     subject = Subject(presentation, tuple(map(tuple, table.permutations)), version, effort)
     return write(NotVirtuallyNilpotent(subject, claim, table.index))
+
+
+def word_trivial(presentation: Presentation, word: Word, proof: Proof, *, effort: int, version: str) -> Witness:
+    """The witness that a word is trivial; the proof has one goal."""
+    subject = Subject(presentation, ((0,),) * presentation.rank, version, effort)
+    lemmas = tuple((lemma.word, tuple(lemma.factors)) for lemma in proof.lemmas)
+    return write(WordTrivial(subject, word, lemmas, proof.goals[0]))
+
+
+def word_not_trivial(
+    presentation: Presentation, word: Word, table: CosetTable, point: int, *, effort: int, version: str
+) -> Witness:
+    """The witness that a word moves a point of an action."""
+    subject = Subject(presentation, tuple(map(tuple, table.permutations)), version, effort)
+    return write(WordNotTrivial(subject, word, point))
+
+
+def different_groups(
+    one: Presentation, two: Presentation, tables: Sequence[CosetTable], others: Sequence[CosetTable], *, effort: int, version: str
+) -> Witness:
+    """The witness that the classes of subgroups of one index differ."""
+    subject = Subject(one, ((0,),) * one.rank, version, effort)
+    lists = [tuple(tuple(map(tuple, table.permutations)) for table in classes) for classes in (tables, others)]
+    return write(DifferentGroups(subject, two, lists[0], lists[1]))
 
 
 def _affine(found: AffineObstruction) -> Affine:

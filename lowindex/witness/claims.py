@@ -18,6 +18,9 @@ Vector = tuple[int, ...]
 Factor = tuple[Word, int, int]
 """Conjugator, number of an earlier equation, +1 or -1."""
 
+Permutations = tuple[tuple[int, ...], ...]
+"""The images of the points under every generator."""
+
 Rational = tuple[int, int]
 """Numerator and denominator >= 1."""
 
@@ -45,12 +48,7 @@ class Subject:
     def framed(self, claim: str, body: dict[str, Any], summary: dict[str, Any]) -> dict[str, Any]:
         """The whole object around the keys of one kind of claim."""
         presentation = self.presentation
-        group = {
-            "names": list(presentation.names),
-            "relators": [list(word) for word in presentation.relators],
-            "text": str(presentation),
-        }
-        head = {"format": FORMAT, "claim": claim, "group": group, "table": [list(images) for images in self.table]}
+        head = {"format": FORMAT, "claim": claim, "group": _group(presentation), "table": [list(images) for images in self.table]}
         made_by = {"version": self.version, "effort": self.effort, "digest": presentation.digest}
         return head | body | {"summary": summary, "made by": made_by}
 
@@ -231,6 +229,58 @@ class NotVirtuallyNilpotent:
         """The JSON object."""
         body = {"obstruction": self.obstruction.content()}
         return self.subject.framed("not virtually nilpotent", body, {"index": self.index})
+
+
+@dataclass(frozen=True)
+class WordTrivial:
+    """The word is 1 in the group: lemmas from the relators, and the number of the equation that says so (-1: freely)."""
+
+    subject: Subject
+    word: Word
+    lemmas: tuple[tuple[Word, tuple[Factor, ...]], ...]
+    goal: int
+
+    def content(self) -> dict[str, Any]:
+        """The JSON object."""
+        lemmas = [[list(word), [[list(u), j, sign] for u, j, sign in factors]] for word, factors in self.lemmas]
+        body = {"word": list(self.word), "lemmas": lemmas, "goal": self.goal}
+        return self.subject.framed("word trivial", body, {"length": len(self.word)})
+
+
+@dataclass(frozen=True)
+class WordNotTrivial:
+    """The word moves a point of the action of the subject's table."""
+
+    subject: Subject
+    word: Word
+    point: int
+
+    def content(self) -> dict[str, Any]:
+        """The JSON object."""
+        summary = {"length": len(self.word), "degree": len(self.subject.table[0])}
+        return self.subject.framed("word not trivial", {"word": list(self.word), "point": self.point}, summary)
+
+
+@dataclass(frozen=True)
+class DifferentGroups:
+    """The classes of subgroups of one index, as tables, of the subject's group and of another one."""
+
+    subject: Subject
+    other: Presentation
+    classes: tuple[Permutations, ...]
+    other_classes: tuple[Permutations, ...]
+
+    def content(self) -> dict[str, Any]:
+        """The JSON object."""
+        lists = [[[list(images) for images in table] for table in tables] for tables in (self.classes, self.other_classes)]
+        index = max(len(table[0]) for tables in lists for table in tables)
+        body = {"other": _group(self.other), "classes": lists[0], "other classes": lists[1]}
+        return self.subject.framed("different groups", body, {"index": index, "classes": [len(tables) for tables in lists]})
+
+
+def _group(presentation: Presentation) -> dict[str, Any]:
+    relators = [list(word) for word in presentation.relators]
+    return {"names": list(presentation.names), "relators": relators, "text": str(presentation)}
 
 
 def _sparse(vector: Vector) -> list[list[int]]:

@@ -24,6 +24,7 @@ LAYERS = [
     {"search"},
     {"quotients"},
     {"nilpotent", "obstructions"},
+    {"growth"},
     {"witness"},
     {"decision", "export"},
     {"cli"},
