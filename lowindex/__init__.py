@@ -21,8 +21,12 @@ _ROOMS = {
     "subgroups": "search",
     "count_classes": "search",
     "homomorphisms": "quotients",
+    "count_onto": "quotients",
+    "NormalSubgroups": "quotients",
     "Verdict": "decision",
     "hunt": "decision",
+    "decide_word": "decision",
+    "compare": "decision",
     "Witness": "witness",
     "check": "checker",
 }

@@ -14,11 +14,13 @@ from lowindex.budget import Budget
 from lowindex.cosets import CosetTable, abelian_table, core, pull_back
 from lowindex.decision.descent import REFUTATION
 from lowindex.decision.visit import Trial, Visit
+from lowindex.quotients import NormalSubgroups
 from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation
 
 LARGEST_CORE = 2500
 LARGEST_ABELIAN_COVER = 130
+LARGEST_NORMAL = 500
 PRIMES = (2, 3, 5, 7, 11)
 
 
@@ -71,6 +73,18 @@ def covers(classes: Classes) -> Iterator[Trial]:
             if cover.table not in seen:
                 seen.add(cover.table)
                 yield _refutation(cover, budget)
+    for cover in _by_layers(classes.start, budget):
+        if cover.table not in seen:
+            yield _refutation(cover, budget)
+
+
+def _by_layers(start: Visit, budget: Budget) -> Iterator[Visit]:
+    """Normal subgroups by layers of chief factors: those that are no core of a subgroup of low index."""
+    group = Presentation.from_relators(start.rank, start.relators)
+    for table in NormalSubgroups(group, LARGEST_NORMAL, budget):
+        if table.index > 1:
+            whole = pull_back(table, start.images)
+            yield Visit(start.presentation, whole, max_class=start.max_class, budget=budget, how=f"a normal subgroup of index {table.index}")
 
 
 def _refutation(visit: Visit, budget: Budget) -> Trial:
