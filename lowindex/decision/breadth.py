@@ -84,7 +84,8 @@ def _by_layers(start: Visit, budget: Budget) -> Iterator[Visit]:
     for table in NormalSubgroups(group, LARGEST_NORMAL, budget):
         if table.index > 1:
             whole = pull_back(table, start.images)
-            yield Visit(start.presentation, whole, max_class=start.max_class, budget=budget, how=f"a normal subgroup of index {table.index}")
+            how = f"a normal subgroup of index {table.index}"
+            yield Visit(start.presentation, whole, max_class=start.max_class, budget=budget, how=how)
 
 
 def _refutation(visit: Visit, budget: Budget) -> Trial:

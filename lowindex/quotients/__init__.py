@@ -12,6 +12,7 @@ from lowindex.quotients.normal import LARGEST_BOUND as LARGEST_NORMAL_INDEX
 from lowindex.quotients.normal import NormalSubgroups
 from lowindex.quotients.onto import HomomorphismClass, HomomorphismSearch, OntoCounts, count_onto, kernel_tables
 from lowindex.quotients.permutations import permutation_cut
+from lowindex.quotients.targets import target_order
 
 __all__ = [
     "LARGEST_NORMAL_INDEX",
@@ -35,6 +36,7 @@ __all__ = [
     "kernel_tables",
     "layer_cuts",
     "permutation_cut",
+    "target_order",
     "twisted_characters",
     "value",
     "wanted_types",

@@ -44,6 +44,14 @@ def target_generators(name: str) -> list[Permutation]:
     return found
 
 
+def target_order(name: str) -> int:
+    """The order of the named group. InputError for an unknown name."""
+    from sympy.combinatorics import Permutation as SympyPermutation
+    from sympy.combinatorics import PermutationGroup
+
+    return int(PermutationGroup([SympyPermutation(list(images)) for images in target_generators(name)]).order())
+
+
 def _unknown(name: str) -> InputError:
     return InputError(
         f"unknown target {name[:60]!r}; give C6, D5 (order 10), S5, A5, Q8, PSL(2,7), PGL(2,5), SL(2,3), AGL(1,7), a product A5 x C2, or "

@@ -1,5 +1,7 @@
 """Words, presentations and their textbook notation."""
 
+from lowindex.words.expressions import Expression, Value
+from lowindex.words.family import Family, Member, parse_values
 from lowindex.words.presentation import Presentation, parse_file
 from lowindex.words.word import (
     Word,
@@ -15,7 +17,11 @@ from lowindex.words.word import (
 )
 
 __all__ = [
+    "Expression",
+    "Family",
+    "Member",
     "Presentation",
+    "Value",
     "Word",
     "commutator",
     "conjugate",
@@ -23,6 +29,7 @@ __all__ = [
     "cyclically_reduced",
     "inverse",
     "parse_file",
+    "parse_values",
     "power",
     "primitive_root",
     "product",

@@ -27,6 +27,7 @@ LAYERS = [
     {"growth"},
     {"witness"},
     {"decision", "export"},
+    {"scan"},
     {"cli"},
 ]
 LEVEL = {room: level for level, rooms in enumerate(LAYERS) for room in rooms}

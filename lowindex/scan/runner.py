@@ -1,0 +1,131 @@
+"""Running a scan on an executor: results are stored as they come, errors of a worker too, and a second run goes on where the first one "
+"stopped."""
+
+from __future__ import annotations
+
+import signal
+from collections.abc import Callable, Iterator, Sequence
+from concurrent.futures import FIRST_COMPLETED, Executor, Future, ProcessPoolExecutor, wait
+from concurrent.futures.process import BrokenProcessPool
+from contextlib import contextmanager
+from dataclasses import dataclass
+from multiprocessing import get_context
+from typing import Any
+
+import lowindex
+from lowindex.scan.store import Item, Result, Store
+from lowindex.scan.tasks import run_task
+
+AHEAD = 3
+"""Tasks a worker that wait in the executor's queue: few, so that an interrupt loses little and memory stays flat."""
+
+Report = Callable[[Item, Result], None]
+
+
+@dataclass(frozen=True)
+class Job:
+    """What is run on every member. `megabytes`: address space a worker may use (0: no cap)."""
+
+    task: str
+    effort: int
+    seconds: float | None = None
+    megabytes: int = 0
+
+
+def run_scan(store: Store, items: Sequence[Item], job: Job, *, jobs: int, report: Report, executor: Executor | None = None) -> None:
+    """Run a job on all items and record every result. `executor`: one to use instead of processes of our own. KeyboardInterrupt passes
+    through after what was finished has been stored."""
+    left = list(items)
+    if executor is not None:
+        _drain(store, left, job, executor, 4 * AHEAD, report)
+        return
+    while left:
+        # a worker that dies breaks the pool: what was in flight is tried again, each alone, to find the group that kills its worker
+        in_flight = _with_pool(store, left, job, jobs, report)
+        for item in in_flight:
+            if _with_pool(store, [item], job, 1, report):
+                died = Result(job.task, job.effort, lowindex.__version__, "error", {"reason": "the worker died (memory or a crash)"}, 0.0)
+                store.record(item.digest, died)
+                report(item, died)
+            left = [other for other in left if other is not item]
+
+
+def _with_pool(store: Store, left: list[Item], job: Job, jobs: int, report: Report) -> list[Item]:
+    """Drain `left` with processes; the items in flight when a worker died."""
+    pool = ProcessPoolExecutor(jobs, mp_context=get_context("spawn"), initializer=prepare_worker, initargs=(job.megabytes,))
+    try:
+        return _drain(store, left, job, pool, AHEAD * jobs if jobs > 1 or len(left) > 1 else 1, report)
+    except BaseException:
+        for process in list((pool._processes or {}).values()):
+            process.terminate()
+        raise
+    finally:
+        pool.shutdown(wait=False, cancel_futures=True)
+
+
+def _drain(store: Store, left: list[Item], job: Job, executor: Executor, window: int, report: Report) -> list[Item]:
+    """Submit with a window, store what comes back and take it out of `left`."""
+    waiting: dict[Future[Result], Item] = {}
+    queue: Iterator[Item] = iter(list(left))
+    broken: list[Item] = []
+    while not broken:
+        try:
+            while len(waiting) < window and (item := next(queue, None)) is not None:
+                waiting[executor.submit(guarded_task, item.text, job)] = item
+        except BrokenProcessPool:
+            broken = list(waiting.values())
+            break
+        if not waiting:
+            return []
+        done, _ = wait(waiting, return_when=FIRST_COMPLETED)
+        for future in done:
+            item = waiting.pop(future)
+            try:
+                result = future.result()
+            except BrokenProcessPool:
+                broken.append(item)
+                continue
+            except Exception as error:
+                reason = f"the worker failed: {type(error).__name__}: {str(error)[:200]}"
+                result = Result(job.task, job.effort, lowindex.__version__, "error", {"reason": reason}, 0.0)
+            store.record(item.digest, result)
+            report(item, result)
+            left.remove(item)
+    return [*broken, *(item for item in waiting.values() if item not in broken)]
+
+
+def prepare_worker(megabytes: int) -> None:
+    """In a new process: leave Ctrl-C to the parent, cap the memory."""
+    signal.signal(signal.SIGINT, signal.SIG_IGN)
+    if megabytes:
+        import resource
+
+        resource.setrlimit(resource.RLIMIT_AS, (megabytes << 20, megabytes << 20))
+
+
+def guarded_task(text: str, job: Job) -> Result:
+    """A task under an alarm: code that does not look at its budget is stopped a while after the time given."""
+    with _alarm(job.seconds):
+        return run_task(text, job.task, job.effort, job.seconds)
+
+
+@contextmanager
+def _alarm(seconds: float | None) -> Iterator[None]:
+    if seconds is None:
+        yield
+        return
+
+    def stop(*_: Any) -> None:
+        raise TimeoutError
+
+    try:
+        before = signal.signal(signal.SIGALRM, stop)
+    except ValueError:  # not in the main thread, as on some clusters: the budget alone must do
+        yield
+        return
+    signal.setitimer(signal.ITIMER_REAL, 1.5 * seconds + 2)
+    try:
+        yield
+    finally:
+        signal.setitimer(signal.ITIMER_REAL, 0)
+        signal.signal(signal.SIGALRM, before)

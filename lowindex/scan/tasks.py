@@ -1,0 +1,97 @@
+"""What a scan does with one group. Tasks are text, so that they can be stored and sent to workers.
+
+    hunt                  the verdict, with a witness
+    onto:TARGET           whether there is an epimorphism onto a named finite group
+    smallest-quotient:N   the least order of a non-abelian quotient, up to N
+    betti:N               the least index, up to N, of a subgroup with infinite first homology
+"""
+
+from __future__ import annotations
+
+import time
+from typing import Any
+
+import lowindex
+from lowindex.budget import Budget
+from lowindex.decision import hunt, plan_for
+from lowindex.errors import InputError
+from lowindex.scan.store import UNDECIDED, Result
+from lowindex.words import Presentation
+
+
+def check_task(task: str) -> None:
+    """InputError for a task that does not exist."""
+    kind, _, rest = task.partition(":")
+    if kind == "hunt" and not rest:
+        return
+    if kind == "onto" and rest:
+        from lowindex.quotients import target_order
+
+        target_order(rest)
+        return
+    if kind in ("smallest-quotient", "betti") and rest.isdigit() and 1 <= int(rest) <= 2999:
+        return
+    raise InputError(f"unknown task {task[:60]!r}; give hunt, onto:TARGET, smallest-quotient:N or betti:N")
+
+
+def run_task(text: str, task: str, effort: int, seconds: float | None) -> Result:
+    """Run one task on one presentation; errors become results."""
+    began = time.monotonic()
+    try:
+        verdict, facts, witness = _run(Presentation.parse(text), task, effort, seconds)
+    except MemoryError:
+        verdict, facts, witness = "error", {"reason": "out of memory"}, None
+    except TimeoutError:
+        verdict, facts, witness = UNDECIDED, {"reason": "stopped after the time given"}, None
+    except Exception as error:
+        verdict, facts, witness = "error", {"reason": f"{type(error).__name__}: {str(error)[:200]}"}, None
+    return Result(task, effort, lowindex.__version__, verdict, facts, time.monotonic() - began, witness)
+
+
+def _run(group: Presentation, task: str, effort: int, seconds: float | None) -> tuple[str, dict[str, Any], str | None]:
+    kind, _, rest = task.partition(":")
+    if kind == "hunt":
+        found = hunt(group, effort=effort, seconds=seconds)
+        facts = found.as_json()
+        keep = ("index", "growth_degree", "hirsch_length", "class", "finite_order", "reason", "searched")
+        return found.verdict, {key: facts[key] for key in keep}, None if found.witness is None else found.witness.text
+    budget = Budget(plan_for(effort).work, seconds=seconds)
+    if kind == "onto":
+        return _onto(group, rest, budget)
+    return (_smallest if kind == "smallest-quotient" else _betti)(group, int(rest), budget)
+
+
+def _onto(group: Presentation, target: str, budget: Budget) -> tuple[str, dict[str, Any], str | None]:
+    from lowindex.quotients import count_onto
+
+    counts = count_onto(group, target, budget=budget)
+    facts = {"order": counts.order, "epimorphisms": counts.epimorphisms, "kernels": counts.kernels, "complete": counts.complete}
+    verdict = "quotient" if counts.kernels else "no quotient" if counts.complete else UNDECIDED
+    return verdict, facts, None
+
+
+def _smallest(group: Presentation, bound: int, budget: Budget) -> tuple[str, dict[str, Any], str | None]:
+    from lowindex.quotients import NormalSubgroups, describe_image
+
+    search = NormalSubgroups(group, bound, budget)
+    for table in search:
+        moves = table.permutations
+        if any(any(p[q[i]] != q[p[i]] for i in range(table.index)) for p in moves for q in moves):
+            image = describe_image(moves)
+            return "quotient", {"order": table.index, "image": image.name or image.adjectives, "complete": True}, None
+    return ("no quotient" if search.complete_to >= bound else UNDECIDED), {"complete_to": search.complete_to}, None
+
+
+def _betti(group: Presentation, bound: int, budget: Budget) -> tuple[str, dict[str, Any], str | None]:
+    from lowindex.algebra import abelianization
+    from lowindex.cosets import subgroup_presentation
+    from lowindex.search import subgroups_by_index
+
+    reached = 0
+    for found in subgroups_by_index(group, bound, budget=budget):
+        reached = max(reached, found.index - 1)
+        subgroup = subgroup_presentation(group, found.table)
+        homology = abelianization(subgroup.rank, subgroup.relators)
+        if homology.betti:
+            return "infinite", {"index": found.index, "homology": str(homology)}, None
+    return UNDECIDED if budget.exhausted else "none", {"complete_to": reached if budget.exhausted else bound}, None
