@@ -137,11 +137,12 @@ def rendered(rows: Sequence[Row], columns: Sequence[str], form: str) -> str:
         return "\n".join([begin, r"\toprule", head, r"\midrule", *lines, r"\bottomrule", r"\end{tabular}"])
     widths = [max(len(line[k]) for line in [list(columns), *cells]) for k in range(len(columns))]
     numeric = [all(re.fullmatch(r"-?[\d.]*", line[k]) for line in cells) for k in range(len(columns))]
-    return "\n".join(
-        "  "
-        "".join(cell.rjust(width) if right else cell.ljust(width) for cell, width, right in zip(line, widths, numeric, strict=True)).rstrip()
-        for line in [list(columns), *cells]
-    )
+    return "\n".join(_aligned([list(columns), *cells], widths, numeric))
+
+
+def _aligned(lines: Sequence[Sequence[str]], widths: Sequence[int], right: Sequence[bool]) -> list[str]:
+    put = [str.rjust if numeric else str.ljust for numeric in right]
+    return ["  ".join(p(cell, width) for p, cell, width in zip(put, line, widths, strict=True)).rstrip() for line in lines]
 
 
 _TEX = {
@@ -168,8 +169,8 @@ def grid(rows: Sequence[Row], across: str, down: str) -> str:
     cell = {(row[down], row[across]): _short(row) for row in rows}
     table = [[f"{down}\\{across}", *map(str, columns)], *([str(y), *(cell.get((y, x), "") for x in columns)] for y in lines)]
     widths = [max(len(line[k]) for line in table) for k in range(len(columns) + 1)]
-    aligned = ("  ".join(cell.rjust(width) for cell, width in zip(line, widths, strict=True)).rstrip() for line in table)
-    return "\n".join([*aligned, "a number: finite of this order; d2: polynomial growth of degree 2; x: not virtually nilpotent; ?: undecided"])
+    key = "a number: finite of this order; d2: polynomial growth of degree 2; x: not virtually nilpotent; ?: undecided"
+    return "\n".join([*_aligned(table, widths, [True] * len(widths)), key])
 
 
 def _short(row: Row) -> str:
