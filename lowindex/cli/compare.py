@@ -26,7 +26,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog=EXAMPLE,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
-    parser.add_argument("first", metavar="A", help="a presentation ⟨…⟩, a file with one, or -")
+    parser.add_argument("first", metavar="A", help="a presentation ⟨…⟩, a file with one, a catalog name, or -")
     parser.add_argument("second", metavar="B", help="another one")
     parser.add_argument("--index", type=int, default=6, metavar="N", help="the highest index (default 6)")
     parser.add_argument("--seconds", type=float, metavar="S", help="stop after this time")

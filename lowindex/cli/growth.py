@@ -32,7 +32,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog=EXAMPLE,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
-    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file with one, or -")
+    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file with one, a catalog name, or -")
     parser.add_argument("--radius", type=int, required=True, metavar="R", help="the largest radius")
     parser.add_argument("--witness", metavar="FILE", help="a witness of this group, instead of a hunt")
     parser.add_argument("--effort", type=int, default=4, metavar="E", help="of the hunt and the counting, 1 to 9 (default 4)")

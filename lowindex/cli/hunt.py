@@ -35,7 +35,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog=EXAMPLE,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
-    parser.add_argument("source", nargs="+", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, or -")
+    parser.add_argument("source", nargs="+", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, a catalog name, or -")
     parser.add_argument("--effort", type=int, default=5, metavar="E", help="how far to search, 1 to 9 (default 5); deterministic")
     parser.add_argument("--seconds", type=float, metavar="S", help="stop after this time, for each group, even within the effort")
     parser.add_argument("--witness", metavar="FILE", help="write the witness to FILE (with several groups, FILE-1, FILE-2, ...)")

@@ -8,7 +8,7 @@ import sys
 from collections.abc import Sequence
 
 from lowindex import __version__
-from lowindex.cli import check, compare, export, growth, hunt, quotients, scan, subgroups, table, word
+from lowindex.cli import catalog, check, compare, export, growth, hunt, quotients, scan, subgroups, table, word
 from lowindex.cli.console import complain
 from lowindex.errors import LowindexError
 
@@ -22,7 +22,7 @@ def parser() -> argparse.ArgumentParser:
     )
     top.add_argument("--version", action="version", version=f"lowindex {__version__}")
     commands = top.add_subparsers(title="commands", metavar="COMMAND", required=True)
-    for module in (hunt, check, export, subgroups, quotients, word, compare, growth, scan, table):
+    for module in (hunt, check, export, subgroups, quotients, word, compare, growth, scan, table, catalog):
         module.add(commands)
     return top
 

@@ -35,7 +35,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog=EXAMPLE,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
-    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, or -")
+    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, a catalog name, or -")
     which = parser.add_mutually_exclusive_group(required=True)
     which.add_argument("--degree", type=int, metavar="N", help="homomorphisms into the symmetric group of this degree")
     which.add_argument("--onto", metavar="TARGET", help="homomorphisms to a named group; those onto it are listed")

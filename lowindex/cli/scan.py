@@ -105,6 +105,11 @@ def _items(arguments: argparse.Namespace) -> tuple[str, list[Item]]:
 
     values = dict(parse_values(text) for text in arguments.values)
     text = arguments.family
+    if not os.path.lexists(text):
+        from lowindex.known import entry
+
+        known = entry(text)
+        text = known.text if known is not None and known.is_family else text
     is_text = text.strip()[:1] in ("⟨", "<")
     if not is_text and text != "-" and values:
         text = read_text(text)

@@ -1,4 +1,4 @@
-"""From a SOURCE argument to presentations: a presentation as text, "-" for standard input, or a file of presentations."""
+"""From a SOURCE argument to presentations: text, "-" for standard input, a file of presentations, or a name of the catalog."""
 
 from __future__ import annotations
 
@@ -19,6 +19,12 @@ def read_source(source: str) -> list[Presentation]:
         return parse_file(_decoded(sys.stdin.buffer.read(LARGEST_FILE + 1), "standard input"))
     if stripped[:1] in ("<", "⟨") or (("<" in stripped or "⟨" in stripped) and not os.path.lexists(source)):
         return parse_file(source)
+    if not os.path.lexists(source):
+        from lowindex.known import entry
+
+        known = entry(source)
+        if known is not None:
+            return [known.presentation]
     return parse_file(read_text(source))
 
 
@@ -38,7 +44,7 @@ def read_text(path: str) -> str:
         with open(path, "rb") as stream:
             return _decoded(stream.read(LARGEST_FILE + 1), repr(path))
     except FileNotFoundError:
-        raise InputError(f"{path[:80]!r} is neither a presentation ⟨…⟩ nor a file; give one of these, or -") from None
+        raise InputError(f"{path[:80]!r} is no presentation ⟨…⟩, file or name of the catalog; give one of them, or -") from None
     except (OSError, ValueError) as error:
         reason = error.strerror if isinstance(error, OSError) else str(error)
         raise InputError(f"{path[:80]!r} cannot be read: {reason}; give a presentation ⟨…⟩, a file, or -") from None

@@ -27,7 +27,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog='example:\n  lowindex subgroups "⟨a, b | a^2, b^3⟩" --index 12 --count',
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
-    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, or -")
+    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, a catalog name, or -")
     parser.add_argument("--index", type=int, required=True, metavar="N", help="the highest index")
     parser.add_argument("--count", action="store_true", help="only numbers, by index")
     parser.add_argument("--normal", action="store_true", help="only normal subgroups")

@@ -27,7 +27,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog=EXAMPLE,
         formatter_class=argparse.RawDescriptionHelpFormatter,
     )
-    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file with one, or -")
+    parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file with one, a catalog name, or -")
     parser.add_argument("word", metavar="WORD", help="a word in its generators")
     parser.add_argument("--effort", type=int, default=5, metavar="E", help="how far to search, 1 to 9 (default 5); deterministic")
     parser.add_argument("--seconds", type=float, metavar="S", help="stop after this time even within the effort")

@@ -27,7 +27,7 @@ LAYERS = [
     {"growth"},
     {"witness"},
     {"decision", "export"},
-    {"scan"},
+    {"scan", "known"},
     {"cli"},
 ]
 LEVEL = {room: level for level, rooms in enumerate(LAYERS) for room in rooms}
