@@ -6,16 +6,24 @@ import argparse
 import os
 import sys
 from collections.abc import Sequence
+from typing import NoReturn
 
 from lowindex import __version__
 from lowindex.cli import catalog, check, compare, export, growth, hunt, quotients, scan, subgroups, table, word
 from lowindex.cli.console import complain
-from lowindex.errors import LowindexError
+from lowindex.errors import InputError, LowindexError
+
+
+class _Parser(argparse.ArgumentParser):
+    """Mistakes in the options are input that cannot be used: one line, exit code 2."""
+
+    def error(self, message: str) -> NoReturn:
+        raise InputError(f"{message}; {self.prog} --help shows what there is")
 
 
 def parser() -> argparse.ArgumentParser:
     """The parser of the whole command line."""
-    top = argparse.ArgumentParser(
+    top = _Parser(
         prog="lowindex",
         description="Decides whether a finitely presented group has a nilpotent subgroup of finite index (equivalently, polynomial "
         "growth), with a witness that an independent checker accepts.",
@@ -29,8 +37,8 @@ def parser() -> argparse.ArgumentParser:
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run one command; the exit code."""
-    chosen = parser().parse_args(arguments)
     try:
+        chosen = parser().parse_args(arguments)
         return int(chosen.run(chosen))
     except LowindexError as error:
         complain(error)

@@ -22,6 +22,8 @@ targets: C6, D5 (of order 10), S5, A5, Q8, PSL(2,7), PGL(2,5), SL(2,3), AGL(1,7)
 exit codes: 0 done, 2 bad input, 3 the search did not end within --seconds"""
 
 
+LARGEST_DEGREE = 100
+
 PROPERTIES = ("transitive", "primitive", "abelian", "nilpotent", "soluble", "perfect", "simple", "derived_length")
 
 
@@ -54,8 +56,8 @@ def run(arguments: argparse.Namespace) -> int:
     """List or count for every group; the exit code."""
     if arguments.seconds is not None and not arguments.seconds > 0:
         raise InputError(f"--seconds must be positive, not {arguments.seconds}")
-    if arguments.degree is not None and arguments.degree < 1:
-        raise InputError(f"--degree must be at least 1, not {arguments.degree}")
+    if arguments.degree is not None and not 1 <= arguments.degree <= LARGEST_DEGREE:
+        raise InputError(f"--degree must be between 1 and {LARGEST_DEGREE}, not {arguments.degree}")
     ended = True
     for group in read_source(arguments.source):
         budget = Budget(seconds=arguments.seconds)

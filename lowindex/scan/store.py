@@ -11,6 +11,7 @@ a scan writes.
 from __future__ import annotations
 
 import json
+import os
 import sqlite3
 import zlib
 from collections.abc import Iterator, Sequence
@@ -66,8 +67,8 @@ class Store:
 
     def __init__(self, path: str | Path, *, create: bool = False) -> None:
         self.path = Path(path)
-        if not create and not self.path.is_file():
-            raise InputError(f"{str(path)!r} is not a store; make one with lowindex scan --store")
+        if not create and not os.path.isfile(path):
+            raise InputError(f"{str(path)[:80]!r} is not a store; make one with lowindex scan --store")
         with self._clear_errors():
             self._connection = sqlite3.connect(self.path, timeout=BUSY_SECONDS, isolation_level=None)
             self._prepare(create)
@@ -77,9 +78,9 @@ class Store:
         application = int(self._connection.execute("PRAGMA application_id").fetchone()[0])
         tables = int(self._connection.execute("SELECT count(*) FROM sqlite_master").fetchone()[0])
         if (tables and application != APPLICATION) or (not tables and not create):
-            raise InputError(f"{str(self.path)!r} is not a store of scans; name another file")
+            raise InputError(f"{str(self.path)[:80]!r} is not a store of scans; name another file")
         if version > len(MIGRATIONS):
-            raise InputError(f"{str(self.path)!r} was written by a newer version; update lowindex to read it")
+            raise InputError(f"{str(self.path)[:80]!r} was written by a newer version; update lowindex to read it")
         if create:
             self._connection.execute("PRAGMA journal_mode = WAL")
             self._connection.execute("PRAGMA synchronous = NORMAL")
@@ -99,7 +100,7 @@ class Store:
         try:
             yield
         except sqlite3.DatabaseError as error:
-            raise InputError(f"the store {str(self.path)!r} cannot be used: {error}; what was stored before is kept") from None
+            raise InputError(f"the store {str(self.path)[:80]!r} cannot be used: {error}; what was stored before is kept") from None
 
     def close(self) -> None:
         """Close the file."""
