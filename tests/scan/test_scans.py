@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import os
+import socket
 import subprocess
 import sys
 import time
@@ -165,7 +166,9 @@ def test_a_worker_that_dies(tmp_path: Path) -> None:
 
 def test_a_dask_cluster_with_a_worker_killed_in_the_middle(tmp_path: Path) -> None:
     distributed = pytest.importorskip("distributed")
-    port = 18786
+    with socket.socket() as probe:
+        probe.bind(("127.0.0.1", 0))
+        port = probe.getsockname()[1]
     environment = os.environ | {"DASK_DISTRIBUTED__SCHEDULER__ALLOWED_FAILURES": "20"}
     scheduler = subprocess.Popen(
         [sys.executable, "-m", "distributed.cli.dask_scheduler", "--port", str(port), "--no-dashboard"],
