@@ -6,13 +6,10 @@ from typing import Any
 
 from lowindex.export import mathematics as tex
 from lowindex.export.document import Block, Items, Paragraph
+from lowindex.export.lemmas import label, lemmas
 from lowindex.export.literature import references
 from lowindex.export.reading import Reading
 from lowindex.export.subgroup import Names, action, listed, relators
-
-LONGEST_CHAIN = 8
-LONGEST_WORD = 60
-"""Lemmas with at most that many factors and letters are shown as a chain of replacements."""
 
 
 def proposition(reading: Reading) -> list[Block]:
@@ -24,7 +21,7 @@ def proposition(reading: Reading) -> list[Block]:
         r"Tracing every relator of $G$ from every point gives defining relators of $H$ in the $\sigma_{i}$~\cite{Reidemeister}. "
         r"These are the ones that are used:"
     )
-    for more, behind in (relators(reading, names, reading.used_relators, text), _definitions(reading, names), _lemmas(reading, names)):
+    for more, behind in (relators(reading, names, reading.used_relators, text), _definitions(reading, names), lemmas(reading, names)):
         main += more
         appendix += behind
     more, behind = _chain(reading, names)
@@ -79,47 +76,6 @@ def _definitions(reading: Reading, names: Names) -> tuple[list[Block], list[Bloc
         tuple(f"${symbol} =$" for symbol in names.symbols[reading.rank :]),
     )
     return listed("Definitions", items, "More elements of $H$ are named:")
-
-
-def _lemmas(reading: Reading, names: Names) -> tuple[list[Block], list[Block]]:
-    if not reading.lemmas:
-        return [], []
-    items = Items(
-        tuple(_lemma(reading, names, k) for k in range(len(reading.lemmas))),
-        tuple(f"($L_{{{k + 1}}}$)" for k in range(len(reading.lemmas))),
-    )
-    text = (
-        "Each of these equations follows from earlier ones: its left side is, in the free group, the product of conjugates of left sides "
-        "of "
-        r"earlier equations that is written behind it, or it is changed to $1$ step by step. ($D_{i}$) stands for the definition of "
-        r"$\gamma_{i}$, "
-        r"read as $\gamma_{i}^{-1}$ times its right side."
-    )
-    return listed("Lemmas", items, text)
-
-
-def label(reading: Reading, number: int) -> str:
-    """How an equation is called."""
-    if number < reading.first_definition:
-        return f"R_{{{number}}}"
-    if number < reading.first_lemma:
-        return f"D_{{{number - reading.first_definition + 1}}}"
-    return f"L_{{{number - reading.first_lemma + 1}}}"
-
-
-def _lemma(reading: Reading, names: Names, k: int) -> str:
-    word, factors = reading.lemmas[k]
-    statement = f"${names.word(word)} = 1$"
-    chain = reading.replacements(k)
-    if len(factors) <= LONGEST_CHAIN and max(len(step) for step, _ in chain) <= LONGEST_WORD:
-        steps = [f"${names.word(step)}$ by $({label(reading, j)})$" for step, j in chain[1:]]
-        return f"{statement}: it becomes " + ", then ".join(steps) + "."
-    shown = []
-    for u, j, sign in factors:
-        power = "^{-1}" if sign < 0 else ""
-        name = f"{label(reading, j)}{power}"
-        shown.append(rf"{names.word(u)}\,\cdot {name}\cdot\,({names.word(u)})^{{-1}}" if u else name)
-    return f"{statement}, the product of " + ", ".join(f"${item}$" for item in shown) + "."
 
 
 def _chain(reading: Reading, names: Names) -> tuple[list[Block], list[Block]]:

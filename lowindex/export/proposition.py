@@ -2,11 +2,17 @@
 
 from __future__ import annotations
 
-from lowindex.export import nilpotent, obstruction
+from lowindex.export import nilpotent, obstruction, words
 from lowindex.export.document import Block, Paragraph, as_latex, as_text
 from lowindex.export.reading import Reading
 
-CLAIMS = {"virtually nilpotent": nilpotent.proposition, "not virtually nilpotent": obstruction.proposition}
+CLAIMS = {
+    "virtually nilpotent": ("A group that has a nilpotent subgroup of finite index", nilpotent.proposition),
+    "not virtually nilpotent": ("A group that has no nilpotent subgroup of finite index", obstruction.proposition),
+    "word trivial": ("A word that is trivial", words.trivial),
+    "word not trivial": ("A word that is not trivial", words.not_trivial),
+    "different groups": ("Two groups that are not isomorphic", words.different),
+}
 
 
 def blocks(reading: Reading) -> list[Block]:
@@ -17,7 +23,7 @@ def blocks(reading: Reading) -> list[Block]:
         f"This page was made from a witness with the SHA-256 digest {digest}, written by lowindex {made_by['version']} at effort "
         f"{made_by['effort']} and accepted by its independent checker."
     )
-    return [*CLAIMS[reading.claim](reading), origin]
+    return [*CLAIMS[reading.claim][1](reading), origin]
 
 
 def text(reading: Reading) -> str:
@@ -31,5 +37,4 @@ def latex(reading: Reading) -> str:
 
 
 def _title(reading: Reading) -> str:
-    which = "a" if reading.claim == "virtually nilpotent" else "no"
-    return f"A group that has {which} nilpotent subgroup of finite index"
+    return CLAIMS[reading.claim][0]

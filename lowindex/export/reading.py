@@ -42,7 +42,11 @@ class Reading:
     @cached_property
     def group(self) -> Presentation:
         """The presented group."""
-        group = self.content["group"]
+        return self.presentation_of(self.content["group"])
+
+    @staticmethod
+    def presentation_of(group: dict[str, Any]) -> Presentation:
+        """A group as witnesses have it."""
         return Presentation(tuple(group["names"]), tuple(map(tuple, group["relators"])))
 
     @cached_property

@@ -19,6 +19,8 @@ class Names:
     def __init__(self, reading: Reading) -> None:
         self.generators = list(map(tex.name, reading.group.names))
         self.symbols = [rf"\sigma_{{{s}}}" for s in range(1, reading.rank + 1)]
+        if reading.claim == "word trivial":
+            self.symbols = list(self.generators)
         self.symbols += [rf"\gamma_{{{d}}}" for d in range(1, len(reading.definitions) + 1)]
 
     def group_word(self, word: Word) -> str:
