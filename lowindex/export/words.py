@@ -34,8 +34,8 @@ def not_trivial(reading: Reading) -> list[Block]:
     point = content["point"]
     statement = f"In the group $G = {tex.group(reading.group)}$ the word ${names.group_word(letters)}$ is not trivial."
     opening = (
-        rf"Let the generators act from the right on the points $0, \dots, {table.index - 1}$ by the permutations below. Every relator fixes "
-        "every point, so this is an action of $G$."
+        rf"Let the generators act from the right on the points $0, \dots, {table.index - 1}$ by the permutations below. Every relator "
+        "fixes every point, so this is an action of $G$."
     )
     images = Items(
         tuple(f"${tex.permutation(images)}$" for images in table.permutations),
@@ -53,8 +53,8 @@ def different(reading: Reading) -> list[Block]:
     one, two = summary["classes"]
     statement = f"The groups ${tex.group(reading.group)}$ and ${tex.group(other)}$ are not isomorphic."
     proof = (
-        f"Isomorphic groups have the same number of conjugacy classes of subgroups of index {summary['index']}, of the same lengths and with "
-        f"the same first homology. The witness lists {one} classes of the first group and {two} of the second one as coset tables; the "
+        f"Isomorphic groups have the same number of conjugacy classes of subgroups of index {summary['index']}, of the same lengths and "
+        f"with the same first homology. The witness lists {one} classes of the first group and {two} of the second one as coset tables; the "
         "checker found them to be tables of different classes, and their lengths and first homology to differ. That the two lists are "
         "complete is the result of two exhaustive searches, which the witness does not repeat."
     )
