@@ -53,9 +53,9 @@ def different(reading: Reading) -> list[Block]:
     one, two = summary["classes"]
     statement = f"The groups ${tex.group(reading.group)}$ and ${tex.group(other)}$ are not isomorphic."
     proof = (
-        f"Isomorphic groups have the same number of conjugacy classes of subgroups of index {summary['index']}, of the same lengths and "
-        f"with the same first homology. The witness lists {one} classes of the first group and {two} of the second one as coset tables; the "
-        "checker found them to be tables of different classes, and their lengths and first homology to differ. That the two lists are "
-        "complete is the result of two exhaustive searches, which the witness does not repeat."
+        f"Isomorphic groups have the same number of conjugacy classes of subgroups of index {summary['index']}, of the same lengths "
+        f"and with the same first homology. The witness lists {one} classes of the first group and {two} of the second one as coset "
+        "tables; the checker found them to be tables of different classes, and their lengths and first homology to differ. That the two "
+        "lists are complete is the result of two exhaustive searches, which the witness does not repeat."
     )
     return [Paragraph(statement, "Proposition"), Paragraph(proof, "Proof")]
