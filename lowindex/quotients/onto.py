@@ -36,8 +36,20 @@ class HomomorphismClass:
     kernel: str
 
 
+@dataclass
+class _Choice:
+    """A node of the backtrack: images so far, the elements that centralize them, candidates for the next image, and how many
+    were tried."""
+
+    images: dict[int, int]
+    stabilizer: Numbers
+    candidates: Numbers
+    tried: int = 0
+
+
 class HomomorphismSearch:
-    """An iterator over the classes of homomorphisms of a group to a target. `finished`: all of them were found within the budget."""
+    """An iterator over the classes of homomorphisms of a group to a target. It ends when all were found (`finished`) or the budget is spent;
+    then a new budget may be set and the iteration goes on where it stopped. A search can be pickled between two items."""
 
     def __init__(self, presentation: Presentation, target: str, *, budget: Budget) -> None:
         self.presentation = presentation
@@ -57,26 +69,41 @@ class HomomorphismSearch:
             np.zeros(size, np.int64),
         )
 
-    def __iter__(self) -> Iterator[HomomorphismClass]:
-        yield from self._extended({}, np.arange(self.target.order))
-        self.finished = not self.budget.exhausted
+        self._stack = [self._choice({}, np.arange(size))]
 
-    def _extended(self, images: dict[int, int], stabilizer: Numbers) -> Iterator[HomomorphismClass]:
+    def __iter__(self) -> Iterator[HomomorphismClass]:
+        return self
+
+    def __next__(self) -> HomomorphismClass:
+        while self._stack and not self.budget.exhausted:
+            choice = self._stack[-1]
+            if choice.tried == len(choice.candidates):
+                self._stack.pop()
+                continue
+            images, stabilizer = choice.images, choice.stabilizer
+            element = int(choice.candidates[choice.tried])
+            choice.tried += 1
+            if self._order:
+                images = images | {self._order[len(images)]: element}
+                stabilizer = self.target.centralizer(element, stabilizer)
+            if len(images) == len(self._order):
+                return self._made(images, self.target.order // len(stabilizer))
+            self._stack.append(self._choice(images, stabilizer))
+        self.finished = not self._stack
+        raise StopIteration
+
+    def _choice(self, images: dict[int, int], stabilizer: Numbers) -> _Choice:
+        """The candidates for the next generator that satisfy the relators whose letters are all known then; the identity when
+        there are no generators."""
+        if not self._order:
+            return _Choice(images, stabilizer, np.zeros(1, np.int64))
         level = len(images)
-        if level == len(self._order):
-            yield self._made(images, self.target.order // len(stabilizer))
-            return
-        k = self._order[level]
-        orbits = self.target.orbits(stabilizer)
-        candidates = np.array([element for element, _ in orbits])
+        candidates = np.array([element for element, _ in self.target.orbits(stabilizer)])
         self.budget.spend(self.target.order // 20 + 10)
         for word in self._ready[level]:
-            candidates = candidates[self._value(word, images, k, candidates) == 0]
+            candidates = candidates[self._value(word, images, self._order[level], candidates) == 0]
             self.budget.spend(len(word) * (1 + len(candidates) // 50))
-        for element in candidates:
-            if self.budget.exhausted:
-                return
-            yield from self._extended(images | {k: int(element)}, self.target.centralizer(int(element), stabilizer))
+        return _Choice(images, stabilizer, candidates)
 
     def _value(self, word: Word, images: dict[int, int], k: int, candidates: Numbers) -> Numbers:
         """The value of a word for every candidate of the image of generator k."""
