@@ -38,8 +38,8 @@ class HomomorphismClass:
 
 @dataclass
 class _Choice:
-    """A node of the backtrack: images so far, the elements that centralize them, candidates for the next image, and how many
-    were tried."""
+    """A node of the backtrack: images so far, the elements that centralize them, candidates for the next image, and how
+    many were tried."""
 
     images: dict[int, int]
     stabilizer: Numbers
@@ -48,8 +48,8 @@ class _Choice:
 
 
 class HomomorphismSearch:
-    """An iterator over the classes of homomorphisms of a group to a target. It ends when all were found (`finished`) or the budget is spent;
-    then a new budget may be set and the iteration goes on where it stopped. A search can be pickled between two items."""
+    """An iterator over the classes of homomorphisms of a group to a target. It ends when all were found (`finished`) or the budget is
+    spent; then a new budget may be set and the iteration goes on where it stopped. A search can be pickled between two items."""
 
     def __init__(self, presentation: Presentation, target: str, *, budget: Budget) -> None:
         self.presentation = presentation
