@@ -22,8 +22,8 @@ Kind = tuple[int, int, tuple[int, ...]]
 
 
 def kinds(tables: list[Any], rank: int, relators: list[Word], where: str) -> tuple[list[Kind], int]:
-    """What the classes are, sorted, and their index (0: none); refused when two of the tables are of the same class or the indices "
-    "differ."""
+    """What the classes are, sorted, and their index (0: none); refused when two of the tables are of the same class or the indices
+    differ."""
     seen: set[tuple[int, ...]] = set()
     found: list[Kind] = []
     indices = set()

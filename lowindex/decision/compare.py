@@ -35,8 +35,8 @@ class ClassKind:
 
 @dataclass(frozen=True)
 class Comparison:
-    """`index`: the least one at which the groups differ, None when they do not up to `complete_to`. `what`: the invariant that differs, "
-    "with both values."""
+    """`index`: the least one at which the groups differ, None when they do not up to `complete_to`. `what`: the invariant that differs,
+    with both values."""
 
     index: int | None
     what: str

@@ -27,8 +27,8 @@ FIRST_DEGREE = 7
 
 @dataclass(frozen=True)
 class WordVerdict:
-    """`degree`: of the separating action; `smallest`: whether every smaller degree was searched without a separation. `searched`: what "
-    "was covered."""
+    """`degree`: of the separating action; `smallest`: whether every smaller degree was searched without a separation. `searched`: what
+    was covered."""
 
     verdict: str
     seconds: float
@@ -119,8 +119,8 @@ class _Word:
         return None
 
     def _enumerated(self, budget: Budget) -> WordVerdict | None:
-        """In a finite group whose order a coset enumeration finds: the regular action separates, or the log of an enumeration is a "
-        "proof."""
+        """In a finite group whose order a coset enumeration finds: the regular action separates, or the log of an enumeration is a
+        proof."""
         table = enumerate_cosets(self.presentation, budget=budget, max_cosets=plan_cosets(self.effort)).table
         if table is None:
             return None

@@ -53,8 +53,8 @@ class Automaton:
         return any(graph.subgraph(part).number_of_edges() > len(part) for part in networkx.strongly_connected_components(graph))
 
     def series(self) -> tuple[list[int], list[int]]:
-        """Numerator and denominator of the generating function, coefficients from degree 0, in lowest terms with denominator beginning "
-        "with 1."""
+        """Numerator and denominator of the generating function, coefficients from degree 0, in lowest terms with denominator beginning
+        with 1."""
         size = len(self.moves)
         return rational_series(self.counts(2 * size + 1), size)
 

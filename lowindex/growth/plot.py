@@ -9,8 +9,8 @@ from lowindex.errors import InputError
 
 
 def plot_balls(balls: Sequence[int], title: str, path: str) -> None:
-    """Write a picture of ball sizes; the ending of the path says which kind. InputError without matplotlib or when the file cannot be "
-    "written."""
+    """Write a picture of ball sizes; the ending of the path says which kind. InputError without matplotlib or when the file cannot be
+    written."""
     try:
         from matplotlib.figure import Figure
     except ImportError:

@@ -50,8 +50,8 @@ def is_even(permutation: Permutation) -> bool:
 
 
 def is_primitive(images: Sequence[Permutation]) -> bool:
-    """Whether a transitive group preserves no partition but the two trivial ones: for every i > 0 the finest one that joins 0 and i (M. "
-    "D. Atkinson 1975)."""
+    """Whether a transitive group preserves no partition but the two trivial ones: for every i > 0 the finest one that joins 0 and i (M.
+    D. Atkinson 1975)."""
     degree = len(images[0]) if images else 1
     for other in range(1, degree):
         block = list(range(degree))

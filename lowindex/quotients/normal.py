@@ -156,8 +156,8 @@ def abelian_action(values: Matrix, p: int) -> CosetTable:
 
 
 def minimal_submodules(action: list[Matrix], p: int, size: int, most: int) -> list[Matrix]:
-    """The minimal submodules of dimension at most `most` of F_p^size under the matrices (acting on column vectors), each as the rows of "
-    "a reduced basis."""
+    """The minimal submodules of dimension at most `most` of F_p^size under the matrices (acting on column vectors), each as the rows of
+    a reduced basis."""
     spaces: dict[bytes, Matrix] = {}
     for vector in _projective_points(p, size):
         space = _spun(vector, action, p, most)

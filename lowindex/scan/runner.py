@@ -1,5 +1,5 @@
-"""Running a scan on an executor: results are stored as they come, errors of a worker too, and a second run goes on where the first one "
-"stopped."""
+"""Running a scan on an executor: results are stored as they come, errors of a worker too, and a second run goes on where the first one
+stopped."""
 
 from __future__ import annotations
 
