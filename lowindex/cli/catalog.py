@@ -27,7 +27,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         help="list the shipped groups and families, or show one with its sources",
         description="Lists groups and families with what is known of them; every command takes their names.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("name", nargs="?", metavar="NAME", help="show this entry")
     parser.add_argument("--kind", metavar="KIND", help="list only entries whose kind contains this text")

@@ -22,7 +22,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         help="check witnesses with the independent checker",
         description="Checks witnesses: standard library only, no search. lowindex/checker/FORMAT.md says what acceptance proves.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("witness", nargs="+", metavar="WITNESS", help="a witness file")
     parser.add_argument("--for", dest="source", metavar="SOURCE", help="the presentation in your hand; witnesses about others are refused")

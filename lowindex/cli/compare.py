@@ -7,6 +7,7 @@ import json
 
 from lowindex.budget import Budget
 from lowindex.cli.console import show
+from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_one
 from lowindex.errors import InputError
 
@@ -24,7 +25,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         description="Compares classes of subgroups by index: how many, their lengths, first homology, indices of cores. A difference "
         "proves that the groups are not isomorphic (it rests on the completeness of both searches); no difference proves nothing.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("first", metavar="A", help="a presentation ⟨…⟩, a file with one, a catalog name, or -")
     parser.add_argument("second", metavar="B", help="another one")
@@ -38,8 +38,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 def run(arguments: argparse.Namespace) -> int:
     """Compare two groups; the exit code."""
     groups = [read_one(arguments.first), read_one(arguments.second)]
-    if arguments.seconds is not None and not arguments.seconds > 0:
-        raise InputError(f"--seconds must be positive, not {arguments.seconds}")
+    require_positive_seconds(arguments)
     if arguments.index < 1:
         raise InputError(f"--index must be at least 1, not {arguments.index}")
     from lowindex.decision import compare

@@ -26,7 +26,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         "the subgroup, its generators and relators, the lemmas and the central chain; or the obstruction with the theorem used and "
         "what to check by hand.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("witness", metavar="WITNESS", help="a witness file")
     parser.add_argument("--to", choices=("text", "latex"), default="text", help="plain text (default) or LaTeX")
@@ -37,6 +36,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 def run(arguments: argparse.Namespace) -> int:
     """Export one witness; the exit code."""
     from lowindex import export
+    from lowindex.witness import Witness
 
     text = read_text(arguments.witness)
     try:
@@ -44,7 +44,7 @@ def run(arguments: argparse.Namespace) -> int:
     except Refused as reason:
         show(f"{arguments.witness}: refused: {reason}")
         return 1
-    page = {"text": export.text, "latex": export.latex}[arguments.to](export.Reading(text.strip()))
+    page = {"text": export.text, "latex": export.latex}[arguments.to](export.Reading(Witness(text.strip())))
     if arguments.output is None:
         show(page.rstrip("\n"))
         return 0

@@ -9,6 +9,7 @@ from typing import Any
 
 from lowindex.budget import Budget
 from lowindex.cli.console import show
+from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_one, read_text
 from lowindex.errors import InputError
 from lowindex.words import Presentation
@@ -30,7 +31,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         description="Counts elements by word length: exactly from a witness of virtual nilpotence, a regular table or a complete rewriting "
         "system, else between certified bounds. A hunt looks for a witness first, unless one is given.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file with one, a catalog name, or -")
     parser.add_argument("--radius", type=int, required=True, metavar="R", help="the largest radius")
@@ -47,8 +47,8 @@ def run(arguments: argparse.Namespace) -> int:
     group = read_one(arguments.source)
     if not 0 <= arguments.radius <= LARGEST_RADIUS:
         raise InputError(f"--radius must be between 0 and {LARGEST_RADIUS}, not {arguments.radius}")
-    if arguments.seconds is not None and not arguments.seconds > 0:
-        raise InputError(f"--seconds must be positive, not {arguments.seconds}")
+    require_positive_seconds(arguments)
+    from lowindex.algebra import polynomial_text
     from lowindex.decision import plan_for
     from lowindex.growth import growth, plot_balls
 
@@ -81,8 +81,9 @@ def run(arguments: argparse.Namespace) -> int:
     if found.lower:
         show(f"  exact to radius {exact_to}; beyond, balls lie between {_list(found.lower)} and {_list(found.upper)}")
     if found.series is not None:
+        above, below = (polynomial_text(part, "z", ascending=True) for part in found.series)
         proved = "generating function of the spheres (theorem)" if found.series_proved else f"fits up to radius {exact_to}"
-        show(f"  {proved}: ({_polynomial(found.series[0])}) / ({_polynomial(found.series[1])})")
+        show(f"  {proved}: ({above}) / ({below})")
     return 0
 
 
@@ -105,12 +106,3 @@ def _witness(group: Presentation, arguments: argparse.Namespace) -> dict[str, An
 
 def _list(numbers: Sequence[int]) -> str:
     return "[" + ", ".join(map(str, numbers)) + "]"
-
-
-def _polynomial(coefficients: Sequence[int]) -> str:
-    terms = ""
-    for power, c in enumerate(coefficients):
-        if c:
-            size = "" if abs(c) == 1 and power else str(abs(c))
-            terms += f" {'-' if c < 0 else '+'} {size}{'' if not power else 'z' if power == 1 else f'z^{power}'}"
-    return terms.removeprefix(" + ").removeprefix(" ") or "0"

@@ -10,6 +10,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 from lowindex.cli.console import Progress, remark, show
+from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source
 from lowindex.errors import InputError
 from lowindex.words import Presentation, Word
@@ -33,7 +34,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         "finite index. The result is announced only after the independent checker has accepted the witness. What can be decided in "
         "principle, and what cannot, stands in the README (groups with too few finite quotients stay undecided, such as Higman's group).",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("source", nargs="+", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, a catalog name, or -")
     parser.add_argument("--effort", type=int, default=5, metavar="E", help="how far to search, 1 to 9 (default 5); deterministic")
@@ -48,8 +48,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 def run(arguments: argparse.Namespace) -> int:
     """Hunt for every group; the exit code."""
     groups = [group for source in arguments.source for group in read_source(source)]
-    if arguments.seconds is not None and not arguments.seconds > 0:
-        raise InputError(f"--seconds must be positive, not {arguments.seconds}")
+    require_positive_seconds(arguments)
     from lowindex.decision import UNDECIDED, plan_for
     from lowindex.decision.kernels import kernels_are_cached
 

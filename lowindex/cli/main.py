@@ -6,7 +6,7 @@ import argparse
 import os
 import sys
 from collections.abc import Sequence
-from typing import NoReturn
+from typing import Any, NoReturn
 
 from lowindex import __version__
 from lowindex.cli import catalog, check, compare, export, growth, hunt, quotients, scan, subgroups, table, word
@@ -15,7 +15,10 @@ from lowindex.errors import InputError, LowindexError
 
 
 class _Parser(argparse.ArgumentParser):
-    """Mistakes in the options are input that cannot be used: one line, exit code 2."""
+    """Mistakes in the options are input that cannot be used: one line, exit code 2. Descriptions and examples are shown as they stand."""
+
+    def __init__(self, **options: Any) -> None:
+        super().__init__(**{"formatter_class": argparse.RawDescriptionHelpFormatter, **options})
 
     def error(self, message: str) -> NoReturn:
         raise InputError(f"{message}; {self.prog} --help shows what there is")
@@ -25,6 +28,7 @@ def parser() -> argparse.ArgumentParser:
     """The parser of the whole command line."""
     top = _Parser(
         prog="lowindex",
+        formatter_class=argparse.HelpFormatter,
         description="Decides whether a finitely presented group has a nilpotent subgroup of finite index (equivalently, polynomial "
         "growth), with a witness that an independent checker accepts.",
     )

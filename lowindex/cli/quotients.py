@@ -9,6 +9,7 @@ from typing import Any
 
 from lowindex.budget import Budget
 from lowindex.cli.console import show
+from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source
 from lowindex.errors import InputError
 from lowindex.words import Presentation
@@ -35,7 +36,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         description="Homomorphisms into the symmetric group of a degree, or to a finite group, one of each conjugacy class, with what "
         "the image is.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, a catalog name, or -")
     which = parser.add_mutually_exclusive_group(required=True)
@@ -54,8 +54,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """List or count for every group; the exit code."""
-    if arguments.seconds is not None and not arguments.seconds > 0:
-        raise InputError(f"--seconds must be positive, not {arguments.seconds}")
+    require_positive_seconds(arguments)
     if arguments.degree is not None and not 1 <= arguments.degree <= LARGEST_DEGREE:
         raise InputError(f"--degree must be between 1 and {LARGEST_DEGREE}, not {arguments.degree}")
     ended = True
@@ -154,19 +153,11 @@ def _show(group: Presentation, number: int, images: Sequence[tuple[int, ...]], m
     name = f"{image.name} ({image.why}), " if image.name else ""
     notes = "".join(f", {key} {value}" for key, value in more.items())
     show(f"{number}. image {name}order {image.order}, {image.adjectives}{notes}")
-    show("   " + ", ".join(f"{name} -> {cycles(perm)}" for name, perm in zip(group.names, images, strict=True)))
+    show("   " + ", ".join(f"{name} -> {cycle_notation(perm)}" for name, perm in zip(group.names, images, strict=True)))
 
 
-def cycles(permutation: Sequence[int]) -> str:
-    """Cycle notation on 1, 2, ...; () for the identity."""
-    seen: set[int] = set()
-    text = ""
-    for start in range(len(permutation)):
-        cycle, point = [], start
-        while point not in seen:
-            seen.add(point)
-            cycle.append(str(point + 1))
-            point = permutation[point]
-        if len(cycle) > 1:
-            text += f"({' '.join(cycle)})"
-    return text or "()"
+def cycle_notation(permutation: Sequence[int]) -> str:
+    """Cycles on 1, 2, ...; () for the identity."""
+    from lowindex.quotients import cycles
+
+    return "".join(f"({' '.join(str(i + 1) for i in cycle)})" for cycle in cycles(permutation) if len(cycle) > 1) or "()"

@@ -14,6 +14,7 @@ from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
 from lowindex.cli.console import remark, show
+from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source, read_text
 from lowindex.errors import InputError
 from lowindex.words import Family, parse_values
@@ -39,7 +40,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         description="Runs a hunt, or another task, on every member of a family or every presentation of a file, and "
         "keeps the results in a store.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("family", metavar="FAMILY", help="a family ⟨…⟩ with parameters, a file of presentations or with one family, or -")
     values = "values of a parameter: n=2..12, p=3,5,7"
@@ -68,8 +68,7 @@ def run(arguments: argparse.Namespace) -> int:
     for name, least in (("jobs", 1), ("memory", 0)):
         if getattr(arguments, name) < least:
             raise InputError(f"--{name} must be at least {least}, not {getattr(arguments, name)}")
-    if arguments.seconds is not None and not arguments.seconds > 0:
-        raise InputError(f"--seconds must be positive, not {arguments.seconds}")
+    require_positive_seconds(arguments)
     task = _task(arguments)
     check_task(task)
     scan, items = _items(arguments)

@@ -5,12 +5,11 @@ from __future__ import annotations
 import argparse
 import json
 from collections.abc import Iterable
-from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 from lowindex.cli.console import remark, show
+from lowindex.cli.options import write_into
 from lowindex.cli.source import read_source
-from lowindex.errors import InputError
 from lowindex.words import Presentation
 
 if TYPE_CHECKING:
@@ -25,7 +24,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         help="list or count the subgroups of index 1 to N",
         description="Every conjugacy class of subgroups of index at most N, with generators, H_1, class length.",
         epilog='example:\n  lowindex subgroups "⟨a, b | a^2, b^3⟩" --index 12 --count',
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file of presentations, a catalog name, or -")
     parser.add_argument("--index", type=int, required=True, metavar="N", help="the highest index")
@@ -73,12 +71,7 @@ def _write_graph(table: CosetTable, group: Presentation, number: int, arguments:
     from lowindex.cosets import graph_text
 
     text = graph_text(table, group.names, arguments.graph_format)
-    path = Path(arguments.graphs) / f"class-{number}-index-{table.index}.{arguments.graph_format}"
-    try:
-        path.parent.mkdir(parents=True, exist_ok=True)
-        path.write_text(text, encoding="utf-8")
-    except OSError as error:
-        raise InputError(f"{str(path)!r} cannot be written: {error.strerror}; name another folder") from None
+    write_into(arguments.graphs, f"class-{number}-index-{table.index}.{arguments.graph_format}", text)
 
 
 def _classes(group: Presentation, arguments: argparse.Namespace) -> Iterable[SubgroupClass]:

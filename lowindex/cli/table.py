@@ -6,6 +6,7 @@ import argparse
 from typing import TYPE_CHECKING
 
 from lowindex.cli.console import show
+from lowindex.cli.options import write_into
 from lowindex.errors import InputError
 
 if TYPE_CHECKING:
@@ -29,7 +30,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         help="print the results of a scan",
         description="Prints what a store of scans holds, with a line that says which range is complete and what is open.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("store", metavar="FILE", help="a store made by lowindex scan")
     parser.add_argument("--scan", metavar="K", type=int, help="the K-th scan in the store, when there are several")
@@ -89,13 +89,7 @@ def _task(store: Store, scan: str, wanted: str | None) -> str:
 
 
 def _write_witnesses(witnesses: dict[int, str | None], rows: list[dict[str, object]], folder: str) -> None:
-    from pathlib import Path
-
-    try:
-        Path(folder).mkdir(parents=True, exist_ok=True)
-        for row in rows:
-            text = witnesses.get(int(str(row["place"])))
-            if text is not None:
-                (Path(folder) / f"{row['place']}.json").write_text(text + "\n", encoding="utf-8")
-    except OSError as error:
-        raise InputError(f"{folder!r} cannot be written: {error.strerror}; name another folder") from None
+    for row in rows:
+        text = witnesses.get(int(str(row["place"])))
+        if text is not None:
+            write_into(folder, f"{row['place']}.json", text + "\n")

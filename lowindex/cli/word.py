@@ -6,9 +6,9 @@ import argparse
 import json
 
 from lowindex.cli.console import show
-from lowindex.cli.quotients import cycles
+from lowindex.cli.options import require_positive_seconds
+from lowindex.cli.quotients import cycle_notation
 from lowindex.cli.source import read_one
-from lowindex.errors import InputError
 
 EXAMPLE = """examples:
   lowindex word "⟨a, b | a^2, b^3, (ab)^5⟩" "(a b^-1)^5"
@@ -25,7 +25,6 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         description="Proves that a word is trivial by a derivation from the relators, or finds permutations that satisfy the relators "
         "and by which the word moves a point, the smallest degree first.",
         epilog=EXAMPLE,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("source", metavar="SOURCE", help="a presentation ⟨…⟩, a file with one, a catalog name, or -")
     parser.add_argument("word", metavar="WORD", help="a word in its generators")
@@ -40,8 +39,7 @@ def run(arguments: argparse.Namespace) -> int:
     """Decide one word; the exit code."""
     group = read_one(arguments.source)
     word = group.word(arguments.word)
-    if arguments.seconds is not None and not arguments.seconds > 0:
-        raise InputError(f"--seconds must be positive, not {arguments.seconds}")
+    require_positive_seconds(arguments)
     from lowindex.decision import NONTRIVIAL, TRIVIAL, UNDECIDED, decide_word
 
     found = decide_word(group, word, effort=arguments.effort, seconds=arguments.seconds)
@@ -70,7 +68,7 @@ def run(arguments: argparse.Namespace) -> int:
             smallest = f"degrees up to {found.searched['complete_to_degree']} were searched"
         show(f"{group.text(word)} ≠ 1: it moves the point {content['point'] + 1} in this action of degree {found.degree}; {smallest}")
         for name, permutation in zip(group.names, content["table"], strict=True):
-            show(f"  {name} -> {cycles(permutation)}")
+            show(f"  {name} -> {cycle_notation(permutation)}")
     else:
         show(f"{group.text(word)}: undecided; searched: " + ", ".join(f"{key.replace('_', ' ')} {n}" for key, n in found.searched.items()))
     return 3 if found.verdict == UNDECIDED else 0

@@ -8,6 +8,7 @@ from lowindex.cosets.operations import (
     core,
     intersection,
     pull_back,
+    regular_action,
     standard_form,
     vector_table,
 )
@@ -30,6 +31,7 @@ __all__ = [
     "intersection",
     "logged_enumeration",
     "pull_back",
+    "regular_action",
     "schreier_graph",
     "standard_form",
     "subgroup_presentation",

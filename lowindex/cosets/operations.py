@@ -27,9 +27,19 @@ def standard_form(table: CosetTable, base: int = 0) -> CosetTable:
 def core(table: CosetTable, *, max_index: int) -> CosetTable | None:
     """The normal core of the stabiliser of 0, as a table: the regular action of the group of permutations. None when it is of more
     than `max_index` points."""
-    rows = table.lists
-    start = tuple(range(table.index))
-    return _orbit(start, 2 * table.rank, lambda p, c: tuple([rows[i][c] for i in p]), max_index)
+    return regular_action(table.permutations, max_index=max_index)
+
+
+def regular_action(permutations: Sequence[Sequence[int]], *, max_index: int | None = None) -> CosetTable | None:
+    """The regular action of the group that permutations of the same points generate; None when it has more than `max_index` elements."""
+    columns: list[Sequence[int]] = []
+    for images in permutations:
+        back = [0] * len(images)
+        for i, j in enumerate(images):
+            back[j] = i
+        columns += [images, back]
+    start = tuple(range(len(permutations[0]))) if permutations else (0,)
+    return _orbit(start, len(columns), lambda p, c: tuple([columns[c][i] for i in p]), max_index)
 
 
 def intersection(*tables: CosetTable) -> CosetTable:

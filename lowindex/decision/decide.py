@@ -9,6 +9,7 @@ from dataclasses import replace
 from typing import Any
 
 import lowindex
+from lowindex.algebra import polynomial_text
 from lowindex.budget import Budget
 from lowindex.checker import Refused, check
 from lowindex.cosets import CosetTable, enumerate_cosets
@@ -95,7 +96,7 @@ class _Hunt:
 
     def _given(self) -> None:
         """Start from the subgroup that the caller has in mind, when its cosets can be enumerated."""
-        reach = max(stage.reach for stage in self.plan.stages if stage.lane == "finite")
+        reach = self.plan.cosets
         budget = self.budget.part(self.budget.left // 3)
         table = enumerate_cosets(self.presentation, self.subgroup, budget=budget, max_cosets=reach).table
         self.searched["given_index"] = None if table is None else table.index
@@ -200,20 +201,9 @@ def refutation(obstruction: Obstruction, visit: Visit) -> str:
     if isinstance(obstruction, ProPObstruction):
         return f"{where} has too few relators modulo {obstruction.prime} (Golod-Shafarevich, Lubotzky)"
     if isinstance(obstruction, AffineObstruction):
-        field = {"Q": "the rationals", "Q[t]/(f)": f"Q[t]/({_polynomial(obstruction.modulus)})", "F_p(t)": f"F_{obstruction.prime}(t)"}
+        field = {"Q": "the rationals", "Q[t]/(f)": f"Q[t]/({polynomial_text(obstruction.modulus)})", "F_p(t)": f"F_{obstruction.prime}(t)"}
         return f"{where} acts on {field[obstruction.kind]} by affine maps with a dilation and a translation"
     return f"small cancellation C'(1/6): {where} is hyperbolic and neither trivial nor infinite cyclic"
-
-
-def _polynomial(coefficients: Sequence[int]) -> str:
-    terms = []
-    for power in range(len(coefficients) - 1, -1, -1):
-        c = coefficients[power]
-        if c:
-            size = "" if abs(c) == 1 and power else str(abs(c))
-            variable = "" if not power else "t" if power == 1 else f"t^{power}"
-            terms.append(f"{'-' if c < 0 else '+'} {size}{variable}")
-    return " ".join(terms).removeprefix("+ ")
 
 
 def _reason(summary: dict[str, Any], visit: Visit) -> str:

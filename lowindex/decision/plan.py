@@ -32,6 +32,11 @@ class Plan:
     max_class: int
     stages: tuple[Stage, ...]
 
+    @property
+    def cosets(self) -> int:
+        """Cosets that an enumeration may define at most."""
+        return max(stage.reach for stage in self.stages if stage.lane == "finite")
+
 
 def plan_for(effort: int) -> Plan:
     """The plan of an effort 1..9; InputError for another number."""

@@ -7,10 +7,12 @@ from dataclasses import dataclass, field
 from typing import Any
 
 import lowindex
+from lowindex.algebra import abelianization
 from lowindex.budget import Budget
 from lowindex.checker import check
-from lowindex.cosets import CosetTable, enumerate_cosets
-from lowindex.decision.plan import plan_for
+from lowindex.cosets import CosetTable, abelian_table, enumerate_cosets
+from lowindex.decision.plan import Plan, plan_for
+from lowindex.decision.verdict import UNDECIDED
 from lowindex.nilpotent import finite_replay
 from lowindex.rewriting import Completion, Derivation, Factor, Proof, RelatorSet, Shortlex, Unfinished, encoded
 from lowindex.search import SubgroupSearch
@@ -19,7 +21,6 @@ from lowindex.words import Presentation, Word, reduced
 
 TRIVIAL = "trivial"
 NONTRIVIAL = "not trivial"
-UNDECIDED = "undecided"
 
 LARGEST_DEGREE = 200
 FIRST_DEGREE = 7
@@ -41,14 +42,14 @@ class WordVerdict:
 def decide_word(presentation: Presentation, word: Word, *, effort: int = 5, seconds: float | None = None) -> WordVerdict:
     """Decide whether a word is trivial, within an effort from 1 to 9 and a cap in seconds. InputError for an effort out of range."""
     plan = plan_for(effort)
-    return _Word(presentation, reduced(word), effort, Budget(plan.work, seconds=seconds)).verdict()
+    return _Word(presentation, reduced(word), plan, Budget(plan.work, seconds=seconds)).verdict()
 
 
 class _Word:
-    def __init__(self, presentation: Presentation, word: Word, effort: int, budget: Budget) -> None:
+    def __init__(self, presentation: Presentation, word: Word, plan: Plan, budget: Budget) -> None:
         self.presentation = presentation
         self.word = word
-        self.effort = effort
+        self.plan = plan
         self.budget = budget
         self.began = time.monotonic()
         self.searched: dict[str, Any] = {"complete_to_degree": 1}
@@ -79,9 +80,6 @@ class _Word:
 
     def _abelian(self) -> WordVerdict | None:
         """A cyclic quotient in which the word has another image than 1."""
-        from lowindex.algebra import abelianization
-        from lowindex.cosets import abelian_table
-
         homology = abelianization(self.presentation.rank, self.presentation.relators)
         for place in range(len(homology.torsion) + homology.betti):
             images = [image[place] for image in homology.images]
@@ -98,7 +96,7 @@ class _Word:
 
     def _moved(self, table: CosetTable) -> WordVerdict:
         point = next(i for i in range(table.index) if table.image(i, self.word) != i)
-        witness = word_not_trivial(self.presentation, self.word, table, point, effort=self.effort, version=lowindex.__version__)
+        witness = word_not_trivial(self.presentation, self.word, table, point, effort=self.plan.effort, version=lowindex.__version__)
         smallest = self.searched["complete_to_degree"] >= table.index - 1
         return self._accepted(NONTRIVIAL, witness, degree=table.index, smallest=smallest)
 
@@ -121,7 +119,7 @@ class _Word:
     def _enumerated(self, budget: Budget) -> WordVerdict | None:
         """In a finite group whose order a coset enumeration finds: the regular action separates, or the log of an enumeration is a
         proof."""
-        table = enumerate_cosets(self.presentation, budget=budget, max_cosets=plan_cosets(self.effort)).table
+        table = enumerate_cosets(self.presentation, budget=budget, max_cosets=self.plan.cosets).table
         if table is None:
             return None
         self.searched["order"] = table.index
@@ -133,8 +131,7 @@ class _Word:
         for number in range(len(self.presentation.relators)):
             relators.insert(number)
         relators.settle()
-        most = plan_cosets(self.effort)
-        replay = finite_replay(relators, table.index, max_cosets=most, budget=budget)
+        replay = finite_replay(relators, table.index, max_cosets=self.plan.cosets, budget=budget)
         if replay is None:
             return None
         factors: list[Factor] = []
@@ -147,14 +144,9 @@ class _Word:
         return self._trivial(derivation.cut([derivation.derive(encoded(self.word), factors)]))
 
     def _trivial(self, proof: Proof) -> WordVerdict:
-        witness = word_trivial(self.presentation, self.word, proof, effort=self.effort, version=lowindex.__version__)
+        witness = word_trivial(self.presentation, self.word, proof, effort=self.plan.effort, version=lowindex.__version__)
         return self._accepted(TRIVIAL, witness)
 
     def _accepted(self, verdict: str, witness: Witness, *, degree: int | None = None, smallest: bool = False) -> WordVerdict:
         check(witness.text, presentation=(self.presentation.names, self.presentation.relators))
         return WordVerdict(verdict, time.monotonic() - self.began, self.searched, degree, smallest, witness)
-
-
-def plan_cosets(effort: int) -> int:
-    """Cosets that an enumeration over 1 may define."""
-    return max(stage.reach for stage in plan_for(effort).stages if stage.lane == "finite")

@@ -6,6 +6,8 @@ import re
 from collections.abc import Iterable, Sequence
 from itertools import groupby
 
+from lowindex.algebra import polynomial_text
+from lowindex.quotients import cycles
 from lowindex.words import Presentation, Word, primitive_root
 
 
@@ -18,12 +20,16 @@ def name(text: str) -> str:
     return shown + primes + (f"_{{{digits}}}" if digits else "")
 
 
+def power(base: str, exponent: int) -> str:
+    """A power; the base itself for the exponent 1."""
+    return base if exponent == 1 else f"{base}^{{{exponent}}}"
+
+
 def word(letters: Word, names: Sequence[str]) -> str:
     """A word as a product of powers; 1 when it is empty."""
     syllables = []
     for letter, run in groupby(letters):
-        exponent = len(list(run)) * (1 if letter > 0 else -1)
-        syllables.append(names[abs(letter) - 1] + ("" if exponent == 1 else f"^{{{exponent}}}"))
+        syllables.append(power(names[abs(letter) - 1], len(list(run)) * (1 if letter > 0 else -1)))
     return r"\,\allowbreak ".join(syllables) or "1"
 
 
@@ -40,30 +46,12 @@ def group(presentation: Presentation) -> str:
 
 def permutation(images: Sequence[int]) -> str:
     """Cycle notation; () for the identity."""
-    seen: set[int] = set()
-    cycles = []
-    for start in range(len(images)):
-        cycle = []
-        point = start
-        while point not in seen:
-            seen.add(point)
-            cycle.append(str(point))
-            point = images[point]
-        if len(cycle) > 1:
-            cycles.append("(" + r"\ ".join(cycle) + ")")
-    return r"\allowbreak ".join(cycles) or "()"
+    return r"\allowbreak ".join("(" + r"\ ".join(map(str, cycle)) + ")" for cycle in cycles(images) if len(cycle) > 1) or "()"
 
 
-def polynomial(coefficients: Sequence[int], variable: str = "t") -> str:
-    """A polynomial from its coefficients, degree 0 first."""
-    terms = ""
-    for power in range(len(coefficients) - 1, -1, -1):
-        c = coefficients[power]
-        if c:
-            size = "" if abs(c) == 1 and power else str(abs(c))
-            monomial = "" if not power else variable if power == 1 else f"{variable}^{{{power}}}"
-            terms += f" {'-' if c < 0 else '+'} {size}{monomial}"
-    return "-" + terms[3:] if terms.startswith(" -") else terms[3:] or "0"
+def polynomial(coefficients: Sequence[int]) -> str:
+    """A polynomial in t from its coefficients, degree 0 first."""
+    return polynomial_text(coefficients, power="^{{{}}}")
 
 
 def matrix(rows: Iterable[Iterable[str]]) -> str:

@@ -119,7 +119,7 @@ def _chain(reading: Reading, names: Names) -> tuple[list[Block], list[Block]]:
 
 
 def _vector(vector: list[list[int]], elements: list[str]) -> str:
-    return r"\,".join(elements[k] + ("" if n == 1 else f"^{{{n}}}") for k, n in vector) or "1"
+    return r"\,".join(tex.power(elements[k], n) for k, n in vector) or "1"
 
 
 def _conclusion(summary: dict[str, Any]) -> str:

@@ -18,7 +18,7 @@ CLAIMS = {
 def blocks(reading: Reading) -> list[Block]:
     """The proposition, its proof, and where it comes from."""
     made_by = reading.content["made by"]
-    digest = " ".join(reading.digest[i : i + 16] for i in range(0, 64, 16))
+    digest = " ".join(reading.witness.digest[i : i + 16] for i in range(0, 64, 16))
     origin = Paragraph(
         f"This page was made from a witness with the SHA-256 digest {digest}, written by lowindex {made_by['version']} at effort "
         f"{made_by['effort']} and accepted by its independent checker."

@@ -5,13 +5,12 @@ Exports are made from the witness file alone. It must have been accepted by the 
 
 from __future__ import annotations
 
-import json
 from dataclasses import dataclass
 from functools import cached_property
-from hashlib import sha256
 from typing import Any
 
 from lowindex.cosets import CosetTable, SubgroupPresentation, subgroup_presentation
+from lowindex.witness import Witness
 from lowindex.words import Presentation, Word, product
 
 Factor = tuple[Word, int, int]
@@ -21,23 +20,17 @@ Factor = tuple[Word, int, int]
 class Reading:
     """A witness with its group, coset table, transversal, Schreier generators and equations."""
 
-    text: str
-
-    @cached_property
-    def content(self) -> dict[str, Any]:
-        """The JSON object."""
-        value: dict[str, Any] = json.loads(self.text)
-        return value
+    witness: Witness
 
     @property
-    def digest(self) -> str:
-        """SHA-256 of the text of the witness without the line end, in hexadecimal."""
-        return sha256(self.text.strip().encode()).hexdigest()
+    def content(self) -> dict[str, Any]:
+        """The JSON object."""
+        return self.witness.content
 
     @property
     def claim(self) -> str:
         """What the witness proves."""
-        return str(self.content["claim"])
+        return self.witness.claim
 
     @cached_property
     def group(self) -> Presentation:

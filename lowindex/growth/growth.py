@@ -6,8 +6,8 @@ from dataclasses import dataclass
 from typing import Any
 
 from lowindex.budget import Budget
-from lowindex.cosets import CosetTable, enumerate_cosets
-from lowindex.growth.automaton import Automaton, rewriting_automaton
+from lowindex.cosets import CosetTable, core, enumerate_cosets
+from lowindex.growth.automaton import Automaton, rational_series, rewriting_automaton
 from lowindex.growth.models import moves_of_table, moves_of_witness
 from lowindex.growth.spheres import balls, sphere_sizes
 from lowindex.quotients import NormalSubgroups
@@ -76,8 +76,6 @@ def _fitted(sizes: list[int], finished: bool) -> tuple[tuple[int, ...], tuple[in
     """A rational function of low degree that agrees with all sizes, when there are enough of them to say so."""
     if finished:
         return tuple(sizes), (1,)
-    from lowindex.growth.automaton import rational_series
-
     numerator, denominator = rational_series(sizes, len(sizes) - 1)
     recurrent = max(len(numerator), len(denominator) - 1)
     return (tuple(numerator), tuple(denominator)) if recurrent + len(denominator) + 1 < len(sizes) else None
@@ -104,8 +102,6 @@ def _free_balls(rank: int, radius: int) -> list[int]:
 
 def _largest_quotient(presentation: Presentation, budget: Budget) -> CosetTable:
     """The regular table of the largest quotient met among normal subgroups and cores of subgroups of low index."""
-    from lowindex.cosets import core
-
     best = CosetTable.from_permutations([[0]] * presentation.rank)
     for table in NormalSubgroups(presentation, 120, budget.part(budget.left // 2)):
         best = max(best, table, key=lambda t: t.index)

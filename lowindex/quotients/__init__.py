@@ -3,7 +3,7 @@
 from lowindex.quotients.characters import twisted_characters
 from lowindex.quotients.counting import count_homomorphisms
 from lowindex.quotients.cut import Cut
-from lowindex.quotients.filters import cycle_type, has_types, is_even, is_primitive, value, wanted_types
+from lowindex.quotients.filters import cycle_type, cycles, has_types, is_even, is_primitive, value, wanted_types
 from lowindex.quotients.homomorphisms import Homomorphism, homomorphisms
 from lowindex.quotients.images import Image, describe_image
 from lowindex.quotients.induced import induced_cuts
@@ -26,6 +26,7 @@ __all__ = [
     "count_homomorphisms",
     "count_onto",
     "cycle_type",
+    "cycles",
     "describe_image",
     "elementary_table",
     "has_types",

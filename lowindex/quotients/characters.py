@@ -70,16 +70,17 @@ def characters(homology: Abelianization, m: int) -> Iterator[tuple[int, ...]]:
 
 def _primes(m: int) -> list[int]:
     """Two small primes that are 1 mod m, and a larger one."""
-    found = [q for q in range(m + 1, 100 * m + 100, m) if _is_prime(q)][:2]
+    found = [q for q in range(m + 1, 100 * m + 100, m) if is_prime(q)][:2]
     return [large_prime(m), *found]
 
 
 def large_prime(m: int) -> int:
     """A prime near 10,000 that is 1 mod m."""
-    return next(q for q in range(10_000 // m * m + 1, 10**6, m) if _is_prime(q))
+    return next(q for q in range(10_000 // m * m + 1, 10**6, m) if is_prime(q))
 
 
-def _is_prime(n: int) -> bool:
+def is_prime(n: int) -> bool:
+    """Whether a small number is prime."""
     return n > 1 and all(n % d for d in range(2, int(n**0.5) + 1))
 
 
@@ -87,7 +88,7 @@ def root_of_unity(m: int, q: int) -> int:
     """An element of order m in F_q^*, m dividing q - 1."""
     for base in range(1, q):
         root = pow(base, (q - 1) // m, q)
-        if all(pow(root, m // p, q) != 1 for p in range(2, m + 1) if m % p == 0 and _is_prime(p)):
+        if all(pow(root, m // p, q) != 1 for p in range(2, m + 1) if m % p == 0 and is_prime(p)):
             return root
     raise AssertionError(f"no element of order {m} modulo {q}")
 

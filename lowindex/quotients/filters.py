@@ -26,27 +26,37 @@ def value(images: Sequence[Permutation], word: Word) -> Permutation:
     return tuple(points)
 
 
+def cycles(permutation: Sequence[int]) -> list[list[int]]:
+    """The cycles by their least points, fixed points included.
+
+    >>> cycles((1, 0, 2))
+    [[0, 1], [2]]
+    """
+    seen: set[int] = set()
+    found: list[list[int]] = []
+    for start in range(len(permutation)):
+        cycle, point = [], start
+        while point not in seen:
+            seen.add(point)
+            cycle.append(point)
+            point = permutation[point]
+        if cycle:
+            found.append(cycle)
+    return found
+
+
 def cycle_type(permutation: Permutation) -> tuple[int, ...]:
     """The lengths of the cycles, longest first, fixed points included.
 
     >>> cycle_type((1, 0, 2))
     (2, 1)
     """
-    seen: set[int] = set()
-    lengths = []
-    for start in range(len(permutation)):
-        length, point = 0, start
-        while point not in seen:
-            seen.add(point)
-            point, length = permutation[point], length + 1
-        if length:
-            lengths.append(length)
-    return tuple(sorted(lengths, reverse=True))
+    return tuple(sorted(map(len, cycles(permutation)), reverse=True))
 
 
 def is_even(permutation: Permutation) -> bool:
     """Whether the permutation lies in the alternating group."""
-    return (len(permutation) - len(cycle_type(permutation))) % 2 == 0
+    return (len(permutation) - len(cycles(permutation))) % 2 == 0
 
 
 def is_primitive(images: Sequence[Permutation]) -> bool:

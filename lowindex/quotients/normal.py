@@ -9,7 +9,8 @@ and D. F. Holt's scheme of elementary layers.)
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass, field
+from dataclasses import dataclass
+from heapq import heappop, heappush
 from itertools import product
 
 import numpy as np
@@ -19,6 +20,7 @@ from lowindex.algebra import relation_matrix
 from lowindex.budget import Budget
 from lowindex.cosets import CosetTable, SubgroupPresentation, compose, standard_form, subgroup_presentation, vector_table
 from lowindex.errors import InputError
+from lowindex.quotients.characters import is_prime
 from lowindex.quotients.images import SIMPLE_ORDERS
 from lowindex.quotients.layers import cokernel, is_regular
 from lowindex.quotients.onto import kernel_tables
@@ -41,7 +43,6 @@ class NormalSubgroups:
     bound: int
     budget: Budget
     complete_to: int = 0
-    _found: dict[CosetTable, None] = field(default_factory=dict)
 
     def __post_init__(self) -> None:
         if not 1 <= self.bound <= LARGEST_BOUND:
@@ -50,12 +51,10 @@ class NormalSubgroups:
     def __iter__(self) -> Iterator[CosetTable]:
         limit = self.bound
         whole = CosetTable.from_permutations([[0]] * self.presentation.rank)
-        pending: dict[CosetTable, None] = {whole: None}
-        done: set[CosetTable] = set()
+        pending: list[tuple[int, list[list[int]], CosetTable]] = [(1, whole.lists, whole)]
+        seen = {whole}
         while pending:
-            table = min(pending, key=lambda t: (t.index, t.lists))
-            del pending[table]
-            done.add(table)
+            table = heappop(pending)[2]
             self.complete_to = min(limit, table.index - 1)
             yield table
             if self.budget.exhausted:
@@ -66,8 +65,9 @@ class NormalSubgroups:
             if gap is not None:
                 limit = min(limit, gap * table.index - 1)
             for found in below:
-                if found not in done:
-                    pending[found] = None
+                if found not in seen:
+                    seen.add(found)
+                    heappush(pending, (found.index, found.lists, found))
         self.complete_to = limit
 
     def _below(self, kernel: SubgroupPresentation, room: int) -> tuple[list[CosetTable], int | None]:
@@ -75,7 +75,7 @@ class NormalSubgroups:
         found: list[CosetTable] = []
         gap: int | None = None
         for p in range(2, room + 1):
-            if all(p % d for d in range(2, int(p**0.5) + 1)):
+            if is_prime(p):
                 tables = self._abelian(kernel, p, room)
                 if tables is None:
                     gap = p if gap is None else gap
@@ -92,20 +92,21 @@ class NormalSubgroups:
 
     def _abelian(self, kernel: SubgroupPresentation, p: int, room: int) -> list[CosetTable] | None:
         """Below the kernel by a simple quotient of its first homology modulo p; None when there are too many vectors to look at."""
-        coordinates = cokernel(relation_matrix(kernel.rank, kernel.relators), kernel.rank, p)
-        size = len(coordinates[0]) if coordinates else 0
-        if size == 0:
+        rows = cokernel(relation_matrix(kernel.rank, kernel.relators), kernel.rank, p)
+        if not rows or not rows[0]:
             return []
+        coordinates = np.array(rows, dtype=np.int64)
+        size = coordinates.shape[1]
         dimension = 0
         while p ** (dimension + 1) <= room:
             dimension += 1
         if p**size > MOST_VECTORS * (p - 1):
             return None
-        action = self._dual_action(kernel, np.array(coordinates, dtype=np.int64), p)
+        action = self._dual_action(kernel, coordinates, p)
         self.budget.spend(p**size // (p - 1) * 10)
         tables = []
         for space in minimal_submodules(action, p, size, dimension):
-            table = self._cut(kernel, np.array(coordinates, dtype=np.int64), space, p)
+            table = self._cut(kernel, coordinates, space, p)
             self.budget.spend(20 * table.index * table.rank)
             if self.budget.exhausted:
                 return None

@@ -54,7 +54,7 @@ def _with_pool(store: Store, left: list[Item], job: Job, jobs: int, report: Repo
     """Drain `left` with processes; the items in flight when a worker died."""
     pool = ProcessPoolExecutor(jobs, mp_context=get_context("spawn"), initializer=prepare_worker, initargs=(job.megabytes,))
     try:
-        return _drain(store, left, job, pool, AHEAD * jobs if jobs > 1 or len(left) > 1 else 1, report)
+        return _drain(store, left, job, pool, AHEAD * jobs, report)
     except BaseException:
         for process in list((pool._processes or {}).values()):
             process.terminate()

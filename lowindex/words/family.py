@@ -17,15 +17,14 @@ from itertools import product as tuples
 
 from lowindex.errors import InputError, NotationError
 from lowindex.words.expressions import WORDS, Expression, Value
-from lowindex.words.notation import Reader
+from lowindex.words.notation import LETTER, Reader
 from lowindex.words.presentation import Presentation
 
 MOST_MEMBERS = 1_000_000
 MOST_TEXT = 4_000_000
 
-_LETTER = "A-Za-zΑ-ΡΣ-Ωα-ω"
-_DECLARED = re.compile(rf"\s*([{_LETTER}][{_LETTER}'′]*)_([{_LETTER}])\s*\(\s*([{_LETTER}])\s+mod\s+([^()]+)\)\s*")
-_INDEX = re.compile(rf"([{_LETTER}][{_LETTER}'′]*)_(?:\{{([^{{}}]*)\}}|([{_LETTER}0-9]))")
+_DECLARED = re.compile(rf"\s*([{LETTER}][{LETTER}'′]*)_([{LETTER}])\s*\(\s*([{LETTER}])\s+mod\s+([^()]+)\)\s*")
+_INDEX = re.compile(rf"([{LETTER}][{LETTER}'′]*)_(?:\{{([^{{}}]*)\}}|([{LETTER}0-9]))")
 _POWER = re.compile(r"\^\s*(?:\{([^{}]*)\}|([-−]?\s*[^\W\d_]\w*))")
 _WHERE = re.compile(r"\bwhere\b")
 _NAMES = re.compile(r"[^\W\d_]\w*")

@@ -27,9 +27,9 @@ MOST_GENERATORS = 10_000
 MOST_CHARACTERS = 16_000_000
 DEEPEST = 100
 
-_LETTER = "A-Za-zΑ-ΡΣ-Ωα-ω"
-_NAME = re.compile(f"[{_LETTER}][{_LETTER}0-9_'′]*")
-_FOLLOWED = re.compile(f"([{_LETTER}][{_LETTER}0-9_']*)[ \\t]+(?=[{_LETTER}])")
+LETTER = "A-Za-zΑ-ΡΣ-Ωα-ω"
+_NAME = re.compile(f"[{LETTER}][{LETTER}0-9_'′]*")
+_FOLLOWED = re.compile(f"([{LETTER}][{LETTER}0-9_']*)[ \\t]+(?=[{LETTER}])")
 _BLANK = re.compile(r"(?:\s+|#[^\n]*)+")
 _INTEGER = re.compile(r"[-+−]?\s*[0-9]+")
 _SUPERSCRIPT = re.compile("[⁻⁺]?[⁰¹²³⁴⁵⁶⁷⁸⁹]+")

@@ -60,7 +60,7 @@ def page(name: str) -> Reading:
     else:
         witness = hunt(group).witness
     assert witness is not None
-    return Reading(witness.text)
+    return Reading(witness)
 
 
 @pytest.mark.parametrize("name", PAGES)
@@ -97,11 +97,11 @@ def test_latex_compiles(name: str, tmp_path: Path) -> None:
 
 def test_command(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
     witness = tmp_path / "w.json"
-    witness.write_text(page("BS(1,2)").text, encoding="utf-8")
+    witness.write_text(page("BS(1,2)").witness.text, encoding="utf-8")
     assert main(["export", str(witness)]) == 0
     assert "Proposition." in capsys.readouterr().out
     assert main(["export", str(witness), "--to", "latex", "--output", str(tmp_path / "w.tex")]) == 0
     assert (tmp_path / "w.tex").read_text(encoding="utf-8").startswith(r"\documentclass")
     assert main(["export", str(witness), "--output", str(tmp_path / "no" / "w.tex")]) == 2
-    witness.write_text(page("BS(1,2)").text.replace('"translation":[1]', '"translation":[2]'), encoding="utf-8")
+    witness.write_text(page("BS(1,2)").witness.text.replace('"translation":[1]', '"translation":[2]'), encoding="utf-8")
     assert main(["export", str(witness)]) == 1

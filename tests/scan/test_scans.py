@@ -12,6 +12,7 @@ from dataclasses import replace
 from pathlib import Path
 from typing import Any
 
+import distributed
 import pytest
 
 from lowindex.cli.main import main
@@ -165,7 +166,6 @@ def test_a_worker_that_dies(tmp_path: Path) -> None:
 
 
 def test_a_dask_cluster_with_a_worker_killed_in_the_middle(tmp_path: Path) -> None:
-    distributed = pytest.importorskip("distributed")
     with socket.socket() as probe:
         probe.bind(("127.0.0.1", 0))
         port = probe.getsockname()[1]

@@ -4,12 +4,16 @@ from __future__ import annotations
 
 import os
 import random
+import resource
 import shutil
 import signal
 import sqlite3
 import subprocess
 import sys
+import tempfile
 import time
+from collections.abc import Iterator
+from contextlib import contextmanager
 from pathlib import Path
 
 import pytest
@@ -169,10 +173,11 @@ def test_a_full_disk_is_one_line(tmp_path: Path) -> None:
     store = tmp_path / "s"
     subprocess.run([*scan_command(store), "--betti", "2"], capture_output=True, cwd=ROOT, check=False)
     size = store.stat().st_size
-    limited = ["prlimit", f"--fsize={size + 20_000}", *scan_command(store)]
-    if shutil.which("prlimit") is None:
-        pytest.skip("prlimit is not installed")
-    done = subprocess.run(limited, capture_output=True, text=True, cwd=ROOT, check=False)
+
+    def limited() -> None:
+        resource.setrlimit(resource.RLIMIT_FSIZE, (size + 20_000, size + 20_000))
+
+    done = subprocess.run(scan_command(store), capture_output=True, text=True, cwd=ROOT, preexec_fn=limited, check=False)
     assert done.returncode == 2
     assert "cannot be used" in done.stderr
     assert "Traceback" not in done.stderr
@@ -180,11 +185,35 @@ def test_a_full_disk_is_one_line(tmp_path: Path) -> None:
         assert opened.scans()
 
 
-@pytest.mark.skipif(hasattr(os, "geteuid") and os.geteuid() == 0, reason="root may write everywhere")
-def test_a_read_only_store(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
-    store = tmp_path / "s"
-    with Store(store, create=True) as opened:
-        opened.enter("scan", ITEMS)
-    store.chmod(0o444)
-    assert main(["scan", "⟨a | a^n⟩", "--set", "n=2", "--store", str(store)]) == 2
-    assert len(capsys.readouterr().err.splitlines()) == 1
+def test_a_read_only_store(capsys: pytest.CaptureFixture[str]) -> None:
+    """Root may write everywhere, so the scan is tried as another user then."""
+    folder = Path(tempfile.mkdtemp())
+    store = folder / "s"
+    command = ["scan", "⟨a | a^n⟩", "--set", "n=2", "--store", str(store), "--effort", "1"]
+    try:
+        assert main(command) == 0
+        store.chmod(0o444)
+        folder.chmod(0o555)
+        capsys.readouterr()
+        with _as_an_ordinary_user():
+            assert main(command) == 2
+        err = capsys.readouterr().err
+        assert len(err.splitlines()) == 1
+        assert "cannot be used" in err
+    finally:
+        folder.chmod(0o755)
+        store.chmod(0o644)
+    assert decided(store) == 1
+    shutil.rmtree(folder)
+
+
+@contextmanager
+def _as_an_ordinary_user() -> Iterator[None]:
+    if os.geteuid() != 0:
+        yield
+        return
+    os.seteuid(65534)
+    try:
+        yield
+    finally:
+        os.seteuid(0)
