@@ -11,7 +11,7 @@ from itertools import combinations_with_replacement
 
 from lowindex.budget import Budget
 from lowindex.cosets import CosetTable
-from lowindex.search import subgroups_by_index
+from lowindex.search import SubgroupSearch
 from lowindex.words import Presentation
 
 Permutation = tuple[int, ...]
@@ -30,19 +30,54 @@ class Homomorphism:
         return len(self.orbits) == 1
 
 
-def homomorphisms(presentation: Presentation, *, degree: int, budget: Budget | None = None) -> Iterator[Homomorphism]:
-    """The homomorphisms into S_degree, one of each class under conjugation in S_degree. They come once all subgroups of index at most
-    `degree` are known; nothing comes when the budget is spent before."""
-    budget = budget or Budget()
-    tables = [found.table for found in subgroups_by_index(presentation, degree, budget=budget)]
-    if budget.exhausted:
-        return
-    by_index: dict[int, list[CosetTable]] = {}
-    for table in tables:
-        by_index.setdefault(table.index, []).append(table)
-    for shape in _partitions(degree, degree):
-        for orbits in _unions(shape, by_index):
-            yield Homomorphism(_joined(orbits, presentation.rank), orbits)
+class HomomorphismStream:
+    """An iterator over the homomorphisms into S_degree, one of each class under conjugation in S_degree. They come once all subgroups of index
+    at most `degree` are known. It ends when all were given (`finished`) or the budget is spent; then a new budget may be set and the
+    iteration goes on where it stopped."""
+
+    def __init__(self, presentation: Presentation, degree: int, *, budget: Budget) -> None:
+        self.presentation = presentation
+        self.degree = degree
+        self.budget = budget
+        self.finished = False
+        self._by_index: dict[int, list[CosetTable]] = {}
+        self._search = SubgroupSearch(presentation, 1, budget=budget)
+        self._listing: Iterator[Homomorphism] | None = None
+
+    def __iter__(self) -> Iterator[Homomorphism]:
+        return self
+
+    def __next__(self) -> Homomorphism:
+        if self._listing is None:
+            if not self._searched():
+                raise StopIteration
+            self._listing = self._listed()
+        found = next(self._listing, None)
+        if found is None:
+            self.finished = True
+            raise StopIteration
+        return found
+
+    def _searched(self) -> bool:
+        """Search one index after the other; whether all searches are over."""
+        while True:
+            search = self._search
+            search.budget = self.budget
+            found = self._by_index.setdefault(search.index, [])
+            found += [item.table for item in search if item.index == search.index]
+            if not search.finished or search.index >= self.degree:
+                return search.finished
+            self._search = SubgroupSearch(self.presentation, search.index + 1, budget=self.budget)
+
+    def _listed(self) -> Iterator[Homomorphism]:
+        for shape in _partitions(self.degree, self.degree):
+            for orbits in _unions(shape, self._by_index):
+                yield Homomorphism(_joined(orbits, self.presentation.rank), orbits)
+
+
+def homomorphisms(presentation: Presentation, *, degree: int, budget: Budget | None = None) -> HomomorphismStream:
+    """The homomorphisms into S_degree up to conjugacy, as an iterator with a budget (none: no limit)."""
+    return HomomorphismStream(presentation, degree, budget=budget or Budget())
 
 
 def _partitions(total: int, largest: int) -> Iterator[list[tuple[int, int]]]:

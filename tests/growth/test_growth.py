@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from itertools import pairwise
+from pathlib import Path
 
 import pytest
 from corpus import coxeter, cyclic, flat, plane
@@ -164,7 +165,14 @@ def test_bounds_where_the_word_problem_is_not_solved() -> None:
     assert all(a <= b for a, b in zip(found.lower, found.upper, strict=True))
 
 
-def test_command(tmp_path: object, capsys: pytest.CaptureFixture[str]) -> None:
+@pytest.mark.parametrize("ending", ["png", "svg", "pdf"])
+def test_plots(ending: str, tmp_path: Path) -> None:
+    path = tmp_path / f"balls.{ending}"
+    assert main(["growth", "⟨a, b | [a,b]⟩", "--radius", "9", "--plot", str(path)]) == 0
+    assert path.read_bytes()[:5] in (b"\x89PNG\r", b"<?xml", b"%PDF-")
+
+
+def test_command(capsys: pytest.CaptureFixture[str]) -> None:
     assert main(["growth", "⟨a, b | [a,b]⟩", "--radius", "5"]) == 0
     assert "polynomial of degree 2" in capsys.readouterr().out
     assert main(["growth", "⟨ | ⟩", "--radius", "5", "--json"]) == 0

@@ -49,3 +49,15 @@ def test_against_all_tuples(text: str, degree: int) -> None:
 
 def test_no_result_when_the_budget_is_spent() -> None:
     assert list(homomorphisms(Presentation.parse("⟨a, b, c | ⟩"), degree=12, budget=Budget(50))) == []
+
+
+def test_a_stream_goes_on_where_its_budget_ended() -> None:
+    group = Presentation.parse("⟨a, b | a^2, b^3⟩")
+    stream = homomorphisms(group, degree=9, budget=Budget(3))
+    assert list(stream) == []
+    assert not stream.finished
+    pieces = []
+    while not stream.finished:
+        stream.budget = Budget(20)
+        pieces += list(stream)
+    assert pieces == list(homomorphisms(group, degree=9))

@@ -181,6 +181,8 @@ def test_normal_subgroups_of_the_heisenberg_group() -> None:
 
 def test_normal_subgroups_of_free_abelian_groups() -> None:
     assert normal_counts("⟨a, b | [a,b]⟩", 30) == [int(divisor_sigma(n)) for n in range(1, 31)]
+    lattices = [sum(d * int(divisor_sigma(d)) for d in range(1, n + 1) if n % d == 0) for n in range(1, 13)]
+    assert normal_counts("⟨a, b, c | [a,b], [a,c], [b,c]⟩", 12) == lattices
 
 
 @pytest.mark.parametrize("name", plane.PLANE_GROUPS)
