@@ -31,9 +31,9 @@ class Homomorphism:
 
 
 class HomomorphismStream:
-    """An iterator over the homomorphisms into S_degree, one of each class under conjugation in S_degree. They come once all subgroups of index
-    at most `degree` are known. It ends when all were given (`finished`) or the budget is spent; then a new budget may be set and the
-    iteration goes on where it stopped."""
+    """An iterator over the homomorphisms into S_degree, one of each class under conjugation in S_degree. They come once all subgroups
+    of index at most `degree` are known. It ends when all were given (`finished`) or the budget is spent; then a new budget may be set
+    and the iteration goes on where it stopped."""
 
     def __init__(self, presentation: Presentation, degree: int, *, budget: Budget) -> None:
         self.presentation = presentation
