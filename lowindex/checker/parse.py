@@ -13,7 +13,7 @@ MOST_BRACKETS = 3_000_000
 LONGEST_INTEGER = 40
 DEEPEST = 8
 
-_MARK = re.compile(r'"(?:[^"\\]|\\.)*+"?|[\[{\]}]')
+_BESIDE_BRACKETS = re.compile(r'(?:"(?:[^"\\]|\\.)*+"?|[^\[{\]}"]+)+')
 
 
 def parse(text: str) -> dict[str, Any]:
@@ -31,14 +31,16 @@ def parse(text: str) -> dict[str, Any]:
 
 
 def _count_brackets(text: str) -> None:
-    depth = count = 0
-    for match in _MARK.finditer(text):
-        mark = match.group()[0]
-        if mark in "[{":
-            depth, count = depth + 1, count + 1
-            require(depth <= DEEPEST, f"brackets are nested more than {DEEPEST} deep")
-            require(count <= MOST_BRACKETS, f"the text has more than {MOST_BRACKETS} lists and objects")
-        elif mark in "]}":
+    brackets = _BESIDE_BRACKETS.sub("", text)
+    count = brackets.count("[") + brackets.count("{")
+    require(count <= MOST_BRACKETS, f"the text has more than {MOST_BRACKETS} lists and objects")
+    depth = 0
+    for bracket in brackets:
+        if bracket in "[{":
+            depth += 1
+            if depth > DEEPEST:
+                raise Refused(f"brackets are nested more than {DEEPEST} deep")
+        else:
             depth -= 1
 
 

@@ -41,7 +41,8 @@ def run(arguments: argparse.Namespace) -> int:
     if arguments.name is not None:
         found = entry(arguments.name)
         if found is None:
-            near = [name for name in entries() if arguments.name.casefold() in name.casefold()][:6]
+            wanted = arguments.name.casefold()
+            near = [name for name in entries() if wanted in name.casefold()][:6]
             hint = f"; there are {', '.join(near)}" if near else "; lowindex catalog lists all names"
             raise InputError(f"the catalog has no entry {arguments.name[:60]!r}{hint}")
         show(json.dumps(_object(found), ensure_ascii=False) if arguments.json else _page(found))
