@@ -60,7 +60,7 @@ def _with_pool(store: Store, left: list[Item], job: Job, jobs: int, report: Repo
             process.terminate()
         raise
     finally:
-        pool.shutdown(wait=False, cancel_futures=True)
+        pool.shutdown(cancel_futures=True)  # waits: the threads of a pool left behind may complain when the interpreter ends
 
 
 def _drain(store: Store, left: list[Item], job: Job, executor: Executor, window: int, report: Report) -> list[Item]:

@@ -13,6 +13,7 @@ from __future__ import annotations
 import json
 import os
 import sqlite3
+import time
 import zlib
 from collections.abc import Iterator, Sequence
 from contextlib import contextmanager
@@ -74,16 +75,17 @@ class Store:
             self._prepare(create)
 
     def _prepare(self, create: bool) -> None:
+        self._connection.execute("BEGIN")  # one snapshot: another scan may be making the tables just now
         version = int(self._connection.execute("PRAGMA user_version").fetchone()[0])
         application = int(self._connection.execute("PRAGMA application_id").fetchone()[0])
         tables = int(self._connection.execute("SELECT count(*) FROM sqlite_master").fetchone()[0])
+        self._connection.execute("COMMIT")
         if (tables and application != APPLICATION) or (not tables and not create):
             raise InputError(f"{str(self.path)[:80]!r} is not a store of scans; name another file")
         if version > len(MIGRATIONS):
             raise InputError(f"{str(self.path)[:80]!r} was written by a newer version; update lowindex to read it")
         if create:
-            self._connection.execute("PRAGMA journal_mode = WAL")
-            self._connection.execute("PRAGMA synchronous = NORMAL")
+            self._write_ahead()
         if version < len(MIGRATIONS):
             self._connection.execute("BEGIN IMMEDIATE")
             version = int(self._connection.execute("PRAGMA user_version").fetchone()[0])
@@ -94,6 +96,19 @@ class Store:
             self._connection.execute(f"PRAGMA application_id = {APPLICATION}")
             self._connection.execute(f"PRAGMA user_version = {len(MIGRATIONS)}")
             self._connection.execute("COMMIT")
+
+    def _write_ahead(self) -> None:
+        """Turn on write-ahead mode; SQLite does not wait for other connections there, so this does."""
+        deadline = time.monotonic() + BUSY_SECONDS
+        while True:
+            try:
+                self._connection.execute("PRAGMA journal_mode = WAL")
+                break
+            except sqlite3.OperationalError as error:
+                if not error.sqlite_errorname.startswith("SQLITE_BUSY") or time.monotonic() > deadline:
+                    raise
+                time.sleep(0.01)
+        self._connection.execute("PRAGMA synchronous = NORMAL")
 
     @contextmanager
     def _clear_errors(self) -> Iterator[None]:

@@ -13,6 +13,7 @@ import sys
 import tempfile
 import time
 from collections.abc import Iterator
+from concurrent.futures import ThreadPoolExecutor
 from contextlib import contextmanager
 from pathlib import Path
 
@@ -61,6 +62,20 @@ def test_readers_while_a_scan_writes(tmp_path: Path) -> None:
         for item in ITEMS:
             writer.record(item.digest, result())
             assert sum(found is not None for _, found in reader.results("scan", "hunt")) == item.place
+
+
+def test_made_by_several_at_once(tmp_path: Path) -> None:
+    """Scans that start at the same moment wait for each other."""
+
+    def use(path: Path) -> int:
+        with Store(path, create=True) as store:
+            store.enter("scan", ITEMS)
+            store.record("digest1", result())
+            return len(store.pending("scan", "hunt", 5, again=False))
+
+    with ThreadPoolExecutor(8) as pool:
+        for k in range(30):
+            assert list(pool.map(use, [tmp_path / str(k)] * 8)) == [4] * 8
 
 
 def spoiled(path: Path, kind: str) -> None:
