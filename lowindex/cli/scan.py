@@ -3,17 +3,13 @@
 from __future__ import annotations
 
 import argparse
-import contextlib
 import os
-import signal
 import sys
 import time
-from collections.abc import Iterator
-from concurrent.futures import Executor
-from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
 from lowindex.cli.console import remark, show
+from lowindex.cli.executors import cluster, terminated_like_interrupt
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source, read_text
 from lowindex.errors import InputError
@@ -73,12 +69,12 @@ def run(arguments: argparse.Namespace) -> int:
     check_task(task)
     scan, items = _items(arguments)
     job = Job(task, arguments.effort, arguments.seconds, arguments.memory)
-    with Store(arguments.store, create=True) as store, _terminated_like_interrupt():
+    with Store(arguments.store, create=True) as store, terminated_like_interrupt():
         store.enter(scan, items)
         pending = store.pending(scan, task, arguments.effort, again=arguments.again)
         interrupted = False
         try:
-            with _Progress(len(pending), arguments.log) as progress, _executor(arguments.cluster) as executor:
+            with _Progress(len(pending), arguments.log) as progress, cluster(arguments.cluster) as executor:
                 run_scan(store, pending, job, jobs=arguments.jobs, report=progress, executor=executor)
         except KeyboardInterrupt:
             interrupted = True
@@ -125,39 +121,6 @@ def _items(arguments: argparse.Namespace) -> tuple[str, list[Item]]:
     if not items:
         raise InputError("the family has no members for these values; change --set or the condition")
     return name, items
-
-
-@contextlib.contextmanager
-def _terminated_like_interrupt() -> Iterator[None]:
-    """SIGTERM ends a scan as Ctrl-C does."""
-
-    def stop(*_: object) -> None:
-        raise KeyboardInterrupt
-
-    before = signal.signal(signal.SIGTERM, stop)
-    try:
-        yield
-    finally:
-        signal.signal(signal.SIGTERM, before)
-
-
-@contextlib.contextmanager
-def _executor(address: str | None) -> Iterator[Executor | None]:
-    if address is None:
-        yield None
-        return
-    try:
-        distributed: Any = import_module("distributed")
-    except ImportError:
-        raise InputError("--cluster needs dask, which is not installed; install it with: pip install 'lowindex[cluster]'") from None
-    try:
-        client = distributed.Client(address, timeout="20s")
-    except (OSError, ValueError) as error:
-        raise InputError(f"no scheduler answers at {address!r}: {str(error)[:100]}; start one, or use --jobs") from None
-    try:
-        yield client.get_executor(pure=False, retries=2)
-    finally:
-        client.close()
 
 
 class _Progress:

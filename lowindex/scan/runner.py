@@ -5,16 +5,16 @@ from __future__ import annotations
 
 import signal
 from collections.abc import Callable, Iterator, Sequence
-from concurrent.futures import FIRST_COMPLETED, Executor, Future, ProcessPoolExecutor, wait
+from concurrent.futures import FIRST_COMPLETED, Executor, Future, wait
 from concurrent.futures.process import BrokenProcessPool
 from contextlib import contextmanager
 from dataclasses import dataclass
-from multiprocessing import get_context
 from typing import Any
 
 import lowindex
 from lowindex.scan.store import Item, Result, Store
 from lowindex.scan.tasks import run_task
+from lowindex.workers import processes
 
 AHEAD = 3
 """Tasks a worker that wait in the executor's queue: few, so that an interrupt loses little and memory stays flat."""
@@ -52,15 +52,8 @@ def run_scan(store: Store, items: Sequence[Item], job: Job, *, jobs: int, report
 
 def _with_pool(store: Store, left: list[Item], job: Job, jobs: int, report: Report) -> list[Item]:
     """Drain `left` with processes; the items in flight when a worker died."""
-    pool = ProcessPoolExecutor(jobs, mp_context=get_context("spawn"), initializer=prepare_worker, initargs=(job.megabytes,))
-    try:
+    with processes(jobs, megabytes=job.megabytes) as pool:
         return _drain(store, left, job, pool, AHEAD * jobs, report)
-    except BaseException:
-        for process in list((pool._processes or {}).values()):
-            process.terminate()
-        raise
-    finally:
-        pool.shutdown(cancel_futures=True)  # waits: the threads of a pool left behind may complain when the interpreter ends
 
 
 def _drain(store: Store, left: list[Item], job: Job, executor: Executor, window: int, report: Report) -> list[Item]:
@@ -92,15 +85,6 @@ def _drain(store: Store, left: list[Item], job: Job, executor: Executor, window:
             report(item, result)
             left.remove(item)
     return [*broken, *(item for item in waiting.values() if item not in broken)]
-
-
-def prepare_worker(megabytes: int) -> None:
-    """In a new process: leave Ctrl-C to the parent, cap the memory."""
-    signal.signal(signal.SIGINT, signal.SIG_IGN)
-    if megabytes:
-        import resource
-
-        resource.setrlimit(resource.RLIMIT_AS, (megabytes << 20, megabytes << 20))
 
 
 def guarded_task(text: str, job: Job) -> Result:

@@ -67,7 +67,26 @@ def cyclic_form(word: Word) -> Word:
     word = cyclically_reduced(word)
     if not word:
         return word
-    return min(w[i:] + w[:i] for w in (word, inverse(word)) for i in range(len(word)))
+    return min(map(_least_rotation, (word, inverse(word))))
+
+
+def _least_rotation(word: Word) -> Word:
+    """By comparing two starting places at a time, in linear time: when they differ after k letters, the k + 1 places from the greater
+    one on are out."""
+    i, j, k, length = 0, 1, 0, len(word)
+    while i < length and j < length and k < length:
+        left, right = word[(i + k) % length], word[(j + k) % length]
+        if left == right:
+            k += 1
+            continue
+        if left > right:
+            i += k + 1
+        else:
+            j += k + 1
+        j += i == j
+        k = 0
+    start = min(i, j)
+    return word[start:] + word[:start]
 
 
 def primitive_root(word: Word) -> tuple[Word, int]:

@@ -18,7 +18,7 @@ PACKAGE = ROOT / "lowindex"
 FILES = sorted(PACKAGE.rglob("*.py"))
 
 LAYERS = [
-    {"errors", "budget", "events"},
+    {"errors", "budget", "events", "workers"},
     {"words"},
     {"cosets", "algebra", "rewriting"},
     {"search"},
