@@ -1,5 +1,6 @@
 """Coset tables, Schreier trees, presentations of subgroups of finite index, coset enumeration."""
 
+from lowindex.cosets.encoding import Columns, Encoding, plain_encoding
 from lowindex.cosets.enumeration import Enumeration, EnumerationLog, enumerate_cosets, logged_enumeration
 from lowindex.cosets.graph import graph_text, schreier_graph
 from lowindex.cosets.operations import (
@@ -17,7 +18,9 @@ from lowindex.cosets.schreier import SchreierTree
 from lowindex.cosets.table import CosetTable, column
 
 __all__ = [
+    "Columns",
     "CosetTable",
+    "Encoding",
     "Enumeration",
     "EnumerationLog",
     "SchreierTree",
@@ -30,6 +33,7 @@ __all__ = [
     "graph_text",
     "intersection",
     "logged_enumeration",
+    "plain_encoding",
     "pull_back",
     "regular_action",
     "schreier_graph",

@@ -6,8 +6,8 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Iterator
 
+from lowindex.cosets import Columns, Encoding
 from lowindex.errors import InputError
-from lowindex.search.encoding import Columns, Encoding
 
 MOST_SYMMETRIES = 1_000
 

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 
+from lowindex.cosets import Columns, Encoding, plain_encoding
 from lowindex.errors import InputError
-from lowindex.search.encoding import Columns, Encoding, plain_encoding
 from lowindex.search.symmetry import symmetries
 from lowindex.words import Presentation, Word, cyclic_form, reduced
 

@@ -6,8 +6,8 @@ import pytest
 from corpus import coxeter, cyclic
 
 from lowindex.budget import Budget
-from lowindex.cosets import enumerate_cosets, enumeration_kernel, logged_enumeration
-from lowindex.cosets.enumeration import _Run
+from lowindex.cosets import enumerate_cosets, enumeration_kernel, logged_enumeration, plain_encoding
+from lowindex.cosets.enumeration import STRATEGIES, _Run
 from lowindex.errors import InputError
 from lowindex.words import Presentation
 
@@ -38,7 +38,7 @@ def test_orders(name: str) -> None:
     assert found.table.is_standard
 
 
-@pytest.mark.parametrize("strategy", ["felsch", "hlt"])
+@pytest.mark.parametrize("strategy", STRATEGIES)
 def test_strategies_agree(strategy: str) -> None:
     group = Presentation.parse(cyclic.two_three_seven(6))
     tables = {enumerate_cosets(group, [group.word("ab")], budget=Budget(), strategy=s).table for s in (strategy, None)}
@@ -69,21 +69,22 @@ def test_unknown_strategy() -> None:
         enumerate_cosets(Presentation.parse("⟨a | ⟩"), budget=Budget(), strategy="fast")
 
 
-@pytest.mark.parametrize("strategy", ["felsch", "hlt"])
+@pytest.mark.parametrize("strategy", STRATEGIES)
 @pytest.mark.parametrize("name", ["S4", "(2,3,7;4)", "F3,2"])
 def test_kernel_is_its_plain_body(name: str, strategy: str, monkeypatch: pytest.MonkeyPatch) -> None:
     """The compiled kernels do exactly what their Python bodies do: same tables, same counters."""
     group = Presentation.parse(GROUPS[name][0])
-    compiled = _Run(group, [], strategy, 5000)
+    compiled = _Run(plain_encoding(group), [], strategy, 5000)
     while not compiled.closed:
         compiled.advance(2000)
-    for function in ("_find", "_push", "_note", "_merge", "_coincide", "_scan", "_define", "_follow", "felsch_slice", "hlt_slice", "begin"):
+    for function in ("enumerate_slice", "compact", "standard"):
         monkeypatch.setattr(enumeration_kernel, function, getattr(enumeration_kernel, function).py_func)
-    plain = _Run(group, [], strategy, 5000)
+    plain = _Run(plain_encoding(group), [], strategy, 5000)
     while not plain.closed:
         plain.advance(2000)
     assert compiled.state.tolist() == plain.state.tolist()
     assert (compiled.array == plain.array).all()
+    assert compiled.table() == plain.table()
 
 
 def test_log_counts_every_definition() -> None:

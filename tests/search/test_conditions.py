@@ -8,11 +8,10 @@ from math import lcm
 import pytest
 
 from lowindex.budget import Budget
-from lowindex.cosets import CosetTable, standard_form
+from lowindex.cosets import CosetTable, plain_encoding, standard_form
 from lowindex.errors import InputError
 from lowindex.quotients import NormalSubgroups
 from lowindex.search import Conditions, SubgroupSearch
-from lowindex.search.encoding import plain_encoding
 from lowindex.search.symmetry import symmetries
 from lowindex.words import Presentation
 

@@ -6,9 +6,9 @@ import pytest
 from corpus import plane
 
 from lowindex.budget import Budget
-from lowindex.cosets import CosetTable
+from lowindex.cosets import CosetTable, plain_encoding
 from lowindex.search import ROOT, Conditions, SubgroupSearch, Task
-from lowindex.search.encoding import _halved, encodings, plain_encoding
+from lowindex.search.encoding import _halved, encodings
 from lowindex.words import Presentation
 
 GROUPS = [
