@@ -6,7 +6,7 @@ import argparse
 import json
 
 from lowindex.budget import Budget
-from lowindex.cli.console import show
+from lowindex.cli.console import announce_compilation, show
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_one
 from lowindex.errors import InputError
@@ -37,6 +37,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """Compare two groups; the exit code."""
+    announce_compilation()
     groups = [read_one(arguments.first), read_one(arguments.second)]
     require_positive_seconds(arguments)
     if arguments.index < 1:

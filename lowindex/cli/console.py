@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+import os
 import sys
+from pathlib import Path
 from types import TracebackType
 from typing import Any
 
+import lowindex
 from lowindex.errors import LowindexError, NotationError
 from lowindex.events import Event
 
@@ -27,6 +30,17 @@ def remark(text: str) -> None:
     """Write a line about what is going on."""
     sys.stderr.write(f"lowindex: {text}\n")
     sys.stderr.flush()
+
+
+def announce_compilation() -> None:
+    """Say so when kernels are going to be compiled, as on first use (looked for as files, nothing is imported)."""
+    package = Path(lowindex.__file__).parent
+    cache = os.environ.get("NUMBA_CACHE_DIR")
+    if cache is None and not os.access(package, os.W_OK):
+        return  # the compiler keeps them somewhere in the home folder then
+    compiled = {path.name.partition("-")[0].partition(".")[0] for path in Path(cache or package).rglob("*_kernel.*.nbc")}
+    if {path.stem for path in package.rglob("*_kernel.py")} - compiled:
+        remark("compiling kernels on first use (a few seconds)")
 
 
 class Progress:

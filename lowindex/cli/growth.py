@@ -8,7 +8,7 @@ from collections.abc import Sequence
 from typing import Any
 
 from lowindex.budget import Budget
-from lowindex.cli.console import show
+from lowindex.cli.console import announce_compilation, show
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_one, read_text
 from lowindex.errors import InputError
@@ -44,6 +44,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """Count for one group; the exit code."""
+    announce_compilation()
     group = read_one(arguments.source)
     if not 0 <= arguments.radius <= LARGEST_RADIUS:
         raise InputError(f"--radius must be between 0 and {LARGEST_RADIUS}, not {arguments.radius}")

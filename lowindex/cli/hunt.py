@@ -9,7 +9,7 @@ from collections.abc import Iterator
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
-from lowindex.cli.console import Progress, remark, show
+from lowindex.cli.console import Progress, announce_compilation, show
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source
 from lowindex.errors import InputError
@@ -50,11 +50,9 @@ def run(arguments: argparse.Namespace) -> int:
     groups = [group for source in arguments.source for group in read_source(source)]
     require_positive_seconds(arguments)
     from lowindex.decision import UNDECIDED, plan_for
-    from lowindex.decision.kernels import kernels_are_cached
 
     plan_for(arguments.effort)
-    if not kernels_are_cached():
-        remark("compiling kernels, this once (about 10 seconds)")
+    announce_compilation()
     if arguments.jobs < 1:
         raise InputError(f"--jobs must be at least 1, not {arguments.jobs}")
     options = [{"effort": arguments.effort, "seconds": arguments.seconds, "subgroup": _words(arguments.words, group)} for group in groups]

@@ -8,7 +8,7 @@ from collections.abc import Iterator, Sequence
 from typing import Any
 
 from lowindex.budget import Budget
-from lowindex.cli.console import show
+from lowindex.cli.console import announce_compilation, show
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source
 from lowindex.errors import InputError
@@ -54,6 +54,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """List or count for every group; the exit code."""
+    announce_compilation()
     require_positive_seconds(arguments)
     if arguments.degree is not None and not 1 <= arguments.degree <= LARGEST_DEGREE:
         raise InputError(f"--degree must be between 1 and {LARGEST_DEGREE}, not {arguments.degree}")

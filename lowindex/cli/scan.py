@@ -8,7 +8,7 @@ import sys
 import time
 from typing import TYPE_CHECKING, Any
 
-from lowindex.cli.console import remark, show
+from lowindex.cli.console import announce_compilation, remark, show
 from lowindex.cli.executors import cluster, terminated_like_interrupt
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source, read_text
@@ -24,7 +24,8 @@ EXAMPLE = """examples:
   lowindex scan groups.txt --onto "PSL(2,7)" --store groups.scan
   lowindex table triangles.scan
 
-A second scan into the same store goes on where the first one stopped; decided members are never computed again.
+A second scan into the same store goes on where the first one stopped; decided members are never computed again. With --again and
+more effort an unfinished search of --betti goes on from its checkpoint.
 exit codes: 0 all decided, 2 bad input, 3 some undecided, 130 interrupted (what was found is stored)"""
 
 
@@ -50,6 +51,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
     parser.add_argument("--memory", type=int, default=0, metavar="MB", help="cap of the address space of a worker, in megabytes")
     parser.add_argument("--jobs", type=int, default=1, metavar="N", help="processes (default 1)")
     parser.add_argument("--cluster", metavar="ADDRESS", help="address of a Dask scheduler to use instead of processes")
+    parser.add_argument("--split", action="store_true", help="with --betti: one member at a time, its search shared by all workers")
     parser.add_argument("--again", action="store_true", help="also members that stayed undecided at a smaller effort")
     parser.add_argument("--log", metavar="FILE", help="append one line for every member")
     parser.set_defaults(run=run)
@@ -57,6 +59,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """Scan; the exit code."""
+    announce_compilation()
     from lowindex.decision import plan_for
     from lowindex.scan import Job, Store, check_task, rows_of, run_scan, summary
 
@@ -68,7 +71,9 @@ def run(arguments: argparse.Namespace) -> int:
     task = _task(arguments)
     check_task(task)
     scan, items = _items(arguments)
-    job = Job(task, arguments.effort, arguments.seconds, arguments.memory)
+    if arguments.split and arguments.betti is None:
+        raise InputError("--split shares the search of --betti among workers; other tasks cannot be split")
+    job = Job(task, arguments.effort, arguments.seconds, arguments.memory, arguments.split)
     with Store(arguments.store, create=True) as store, terminated_like_interrupt():
         store.enter(scan, items)
         pending = store.pending(scan, task, arguments.effort, again=arguments.again)

@@ -11,7 +11,7 @@ from collections.abc import Iterable
 from concurrent.futures import BrokenExecutor
 from typing import TYPE_CHECKING, Any
 
-from lowindex.cli.console import remark, show
+from lowindex.cli.console import announce_compilation, remark, show
 from lowindex.cli.executors import executor, terminated_like_interrupt
 from lowindex.cli.options import require_positive_seconds, write_into
 from lowindex.cli.source import read_source
@@ -65,6 +65,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """List or count; the exit code."""
+    announce_compilation()
     require_positive_seconds(arguments)
     if arguments.jobs < 1:
         raise InputError(f"--jobs must be at least 1, not {arguments.jobs}")

@@ -5,7 +5,7 @@ from __future__ import annotations
 import argparse
 import json
 
-from lowindex.cli.console import show
+from lowindex.cli.console import announce_compilation, show
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.quotients import cycle_notation
 from lowindex.cli.source import read_one
@@ -37,6 +37,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """Decide one word; the exit code."""
+    announce_compilation()
     group = read_one(arguments.source)
     word = group.word(arguments.word)
     require_positive_seconds(arguments)

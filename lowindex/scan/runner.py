@@ -5,13 +5,14 @@ from __future__ import annotations
 
 import signal
 from collections.abc import Callable, Iterator, Sequence
-from concurrent.futures import FIRST_COMPLETED, Executor, Future, wait
+from concurrent.futures import FIRST_COMPLETED, BrokenExecutor, Executor, Future, wait
 from concurrent.futures.process import BrokenProcessPool
-from contextlib import contextmanager
+from contextlib import contextmanager, nullcontext
 from dataclasses import dataclass
 from typing import Any
 
 import lowindex
+from lowindex.scan.betti import Pool
 from lowindex.scan.store import Item, Result, Store
 from lowindex.scan.tasks import run_task
 from lowindex.workers import processes
@@ -24,18 +25,23 @@ Report = Callable[[Item, Result], None]
 
 @dataclass(frozen=True)
 class Job:
-    """What is run on every member. `megabytes`: address space a worker may use (0: no cap)."""
+    """What is run on every member. `megabytes`: address space a worker may use (0: no cap). `split`: one member at a time, its search
+    being shared by all workers."""
 
     task: str
     effort: int
     seconds: float | None = None
     megabytes: int = 0
+    split: bool = False
 
 
 def run_scan(store: Store, items: Sequence[Item], job: Job, *, jobs: int, report: Report, executor: Executor | None = None) -> None:
     """Run a job on all items and record every result. `executor`: one to use instead of processes of our own. KeyboardInterrupt passes
     through after what was finished has been stored."""
     left = list(items)
+    if job.split:
+        _one_by_one(store, left, job, jobs, report, executor)
+        return
     if executor is not None:
         _drain(store, left, job, executor, 4 * AHEAD, report)
         return
@@ -44,10 +50,34 @@ def run_scan(store: Store, items: Sequence[Item], job: Job, *, jobs: int, report
         in_flight = _with_pool(store, left, job, jobs, report)
         for item in in_flight:
             if _with_pool(store, [item], job, 1, report):
-                died = Result(job.task, job.effort, lowindex.__version__, "error", {"reason": "the worker died (memory or a crash)"}, 0.0)
-                store.record(item.digest, died)
-                report(item, died)
-            left = [other for other in left if other is not item]
+                _finish(store, left, item, _died(job), report)
+            else:
+                left.remove(item)
+
+
+def _one_by_one(store: Store, items: list[Item], job: Job, jobs: int, report: Report, executor: Executor | None) -> None:
+    """The search of each member is shared by all workers; a member that kills a worker is recorded as such."""
+    while items:
+        with nullcontext(executor) if executor is not None else processes(jobs, megabytes=job.megabytes) as pool:
+            shared = Pool(pool, jobs if executor is None else 4 * AHEAD)
+            try:
+                while items:
+                    checkpoint = store.checkpoint(items[0].digest, job.task)
+                    result = run_task(items[0].text, job.task, job.effort, job.seconds, checkpoint=checkpoint, pool=shared)
+                    _finish(store, items, items[0], result, report)
+            except BrokenExecutor:
+                _finish(store, items, items[0], _died(job), report)
+
+
+def _finish(store: Store, left: list[Item], item: Item, result: Result, report: Report) -> None:
+    """Store a result and take its member out of `left`."""
+    store.record(item.digest, result)
+    report(item, result)
+    left.remove(item)
+
+
+def _died(job: Job) -> Result:
+    return Result(job.task, job.effort, lowindex.__version__, "error", {"reason": "the worker died (memory or a crash)"}, 0.0)
 
 
 def _with_pool(store: Store, left: list[Item], job: Job, jobs: int, report: Report) -> list[Item]:
@@ -64,7 +94,7 @@ def _drain(store: Store, left: list[Item], job: Job, executor: Executor, window:
     while not broken:
         try:
             while len(waiting) < window and (item := next(queue, None)) is not None:
-                waiting[executor.submit(guarded_task, item.text, job)] = item
+                waiting[executor.submit(guarded_task, item.text, job, store.checkpoint(item.digest, job.task))] = item
         except BrokenProcessPool:
             broken = list(waiting.values())
             break
@@ -81,16 +111,14 @@ def _drain(store: Store, left: list[Item], job: Job, executor: Executor, window:
             except Exception as error:
                 reason = f"the worker failed: {type(error).__name__}: {str(error)[:200]}"
                 result = Result(job.task, job.effort, lowindex.__version__, "error", {"reason": reason}, 0.0)
-            store.record(item.digest, result)
-            report(item, result)
-            left.remove(item)
+            _finish(store, left, item, result, report)
     return [*broken, *(item for item in waiting.values() if item not in broken)]
 
 
-def guarded_task(text: str, job: Job) -> Result:
+def guarded_task(text: str, job: Job, checkpoint: str | None) -> Result:
     """A task under an alarm: code that does not look at its budget is stopped a while after the time given."""
     with _alarm(job.seconds):
-        return run_task(text, job.task, job.effort, job.seconds)
+        return run_task(text, job.task, job.effort, job.seconds, checkpoint=checkpoint)
 
 
 @contextmanager

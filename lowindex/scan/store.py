@@ -3,6 +3,7 @@
     groups    digest, text                                   presentations
     members   scan, place, name, parameters, digest          which presentations a scan goes through, in order
     runs      digest, task, effort, version, ...             one result for every presentation, task and effort
+    checkpoints  digest, task, state                         where a search that was not finished stands, for a later run with more effort
 
 Every result is one short transaction in write-ahead mode, so a killed scan loses at most what was in flight, and readers may look while
 a scan writes.
@@ -32,6 +33,9 @@ MIGRATIONS = (
     CREATE TABLE runs (digest TEXT NOT NULL, task TEXT NOT NULL, effort INTEGER NOT NULL, version TEXT NOT NULL, verdict TEXT NOT NULL,
                        facts TEXT NOT NULL, seconds REAL NOT NULL, witness BLOB, PRIMARY KEY (digest, task, effort));
     """,
+    """
+    CREATE TABLE checkpoints (digest TEXT NOT NULL, task TEXT NOT NULL, state BLOB NOT NULL, PRIMARY KEY (digest, task)) WITHOUT ROWID;
+    """,
 )
 """Statements that take the file from one schema version to the next."""
 
@@ -52,7 +56,8 @@ class Item:
 
 @dataclass(frozen=True)
 class Result:
-    """What a run found. `facts`: numbers and short texts, as JSON can hold them; `verdict` "error" when the run failed."""
+    """What a run found. `facts`: numbers and short texts, as JSON can hold them; `verdict` "error" when the run failed; `checkpoint`: where
+    an unfinished search stands."""
 
     task: str
     effort: int
@@ -61,6 +66,7 @@ class Result:
     facts: dict[str, Any]
     seconds: float
     witness: str | None = None
+    checkpoint: str | None = None
 
 
 class Store:
@@ -114,8 +120,21 @@ class Store:
     def _clear_errors(self) -> Iterator[None]:
         try:
             yield
-        except sqlite3.DatabaseError as error:
+        except (sqlite3.DatabaseError, zlib.error) as error:
             raise InputError(f"the store {str(self.path)[:80]!r} cannot be used: {error}; what was stored before is kept") from None
+
+    @contextmanager
+    def _writing(self) -> Iterator[None]:
+        """One transaction."""
+        with self._clear_errors():
+            self._connection.execute("BEGIN IMMEDIATE")
+            try:
+                yield
+                self._connection.execute("COMMIT")
+            except BaseException:
+                if self._connection.in_transaction:
+                    self._connection.execute("ROLLBACK")
+                raise
 
     def close(self) -> None:
         """Close the file."""
@@ -129,29 +148,34 @@ class Store:
 
     def enter(self, scan: str, items: Sequence[Item]) -> None:
         """Say what a scan goes through; what it went through before under this name is replaced, results are kept."""
-        with self._clear_errors():
-            self._connection.execute("BEGIN IMMEDIATE")
-            try:
-                self._connection.executemany("INSERT OR IGNORE INTO groups VALUES (?, ?)", ((item.digest, item.text) for item in items))
-                self._connection.execute("DELETE FROM members WHERE scan = ?", (scan,))
-                self._connection.executemany(
-                    "INSERT INTO members VALUES (?, ?, ?, ?, ?)",
-                    ((scan, item.place, item.name or None, json.dumps(item.parameters), item.digest) for item in items),
-                )
-                self._connection.execute("COMMIT")
-            except BaseException:
-                self._connection.execute("ROLLBACK")
-                raise
+        with self._writing():
+            self._connection.executemany("INSERT OR IGNORE INTO groups VALUES (?, ?)", ((item.digest, item.text) for item in items))
+            self._connection.execute("DELETE FROM members WHERE scan = ?", (scan,))
+            self._connection.executemany(
+                "INSERT INTO members VALUES (?, ?, ?, ?, ?)",
+                ((scan, item.place, item.name or None, json.dumps(item.parameters), item.digest) for item in items),
+            )
 
     def record(self, digest: str, result: Result) -> None:
-        """Keep a result; one of the same task and effort is replaced."""
+        """Keep a result; one of the same task and effort is replaced. Its checkpoint, or its having none, replaces the one
+        kept, unless the run failed."""
         witness = None if result.witness is None else zlib.compress(result.witness.encode(), 9)
         facts = json.dumps(result.facts, ensure_ascii=False)
+        row = (digest, result.task, result.effort, result.version, result.verdict, facts, result.seconds, witness)
+        with self._writing():
+            self._connection.execute("INSERT OR REPLACE INTO runs VALUES (?, ?, ?, ?, ?, ?, ?, ?)", row)
+            if result.verdict != "error":
+                self._connection.execute("DELETE FROM checkpoints WHERE digest = ? AND task = ?", row[:2])
+            if result.checkpoint is not None:
+                state = zlib.compress(result.checkpoint.encode(), 9)
+                self._connection.execute("INSERT INTO checkpoints VALUES (?, ?, ?)", (*row[:2], state))
+
+    def checkpoint(self, digest: str, task: str) -> str | None:
+        """Where an unfinished search stands, as text."""
+        query = "SELECT state FROM checkpoints WHERE digest = ? AND task = ?"
         with self._clear_errors():
-            self._connection.execute(
-                "INSERT OR REPLACE INTO runs VALUES (?, ?, ?, ?, ?, ?, ?, ?)",
-                (digest, result.task, result.effort, result.version, result.verdict, facts, result.seconds, witness),
-            )
+            row = self._connection.execute(query, (digest, task)).fetchone()
+            return None if row is None else zlib.decompress(row[0]).decode()
 
     def pending(self, scan: str, task: str, effort: int, *, again: bool) -> list[Item]:
         """The members without a result: none at all; with `again`, also the undecided ones and errors of smaller efforts. A presentation

@@ -9,12 +9,13 @@
 from __future__ import annotations
 
 import time
-from typing import Any
+from concurrent.futures import BrokenExecutor
 
 import lowindex
 from lowindex.budget import Budget
 from lowindex.decision import hunt, plan_for
 from lowindex.errors import InputError
+from lowindex.scan.betti import Finding, Pool, first_betti
 from lowindex.scan.store import UNDECIDED, Result
 from lowindex.words import Presentation
 
@@ -34,43 +35,50 @@ def check_task(task: str) -> None:
     raise InputError(f"unknown task {task[:60]!r}; give hunt, onto:TARGET, smallest-quotient:N or betti:N")
 
 
-def run_task(text: str, task: str, effort: int, seconds: float | None) -> Result:
-    """Run one task on one presentation; errors become results."""
+def run_task(
+    text: str, task: str, effort: int, seconds: float | None, *, checkpoint: str | None = None, pool: Pool | None = None
+) -> Result:
+    """Run one task on one presentation, from a checkpoint if there is one; errors become results."""
     began = time.monotonic()
     try:
-        verdict, facts, witness = _run(Presentation.parse(text), task, effort, seconds)
+        found = _run(Presentation.parse(text), task, effort, seconds, checkpoint, pool)
     except MemoryError:
-        verdict, facts, witness = "error", {"reason": "out of memory"}, None
+        found = Finding("error", {"reason": "out of memory"})
     except TimeoutError:
-        verdict, facts, witness = UNDECIDED, {"reason": "stopped after the time given"}, None
+        found = Finding(UNDECIDED, {"reason": "stopped after the time given"}, checkpoint=checkpoint)
+    except BrokenExecutor:
+        raise
     except Exception as error:
-        verdict, facts, witness = "error", {"reason": f"{type(error).__name__}: {str(error)[:200]}"}, None
-    return Result(task, effort, lowindex.__version__, verdict, facts, time.monotonic() - began, witness)
+        found = Finding("error", {"reason": f"{type(error).__name__}: {str(error)[:200]}"})
+    spent = time.monotonic() - began
+    return Result(task, effort, lowindex.__version__, found.verdict, found.facts, spent, found.witness, found.checkpoint)
 
 
-def _run(group: Presentation, task: str, effort: int, seconds: float | None) -> tuple[str, dict[str, Any], str | None]:
+def _run(group: Presentation, task: str, effort: int, seconds: float | None, checkpoint: str | None, pool: Pool | None) -> Finding:
     kind, _, rest = task.partition(":")
     if kind == "hunt":
         found = hunt(group, effort=effort, seconds=seconds)
         facts = found.as_json()
         keep = ("index", "growth_degree", "hirsch_length", "class", "finite_order", "reason", "searched")
-        return found.verdict, {key: facts[key] for key in keep}, None if found.witness is None else found.witness.text
+        return Finding(found.verdict, {key: facts[key] for key in keep}, None if found.witness is None else found.witness.text)
     budget = Budget(plan_for(effort).work, seconds=seconds)
     if kind == "onto":
         return _onto(group, rest, budget)
-    return (_smallest if kind == "smallest-quotient" else _betti)(group, int(rest), budget)
+    if kind == "smallest-quotient":
+        return _smallest(group, int(rest), budget)
+    return first_betti(group, int(rest), budget, checkpoint, pool)
 
 
-def _onto(group: Presentation, target: str, budget: Budget) -> tuple[str, dict[str, Any], str | None]:
+def _onto(group: Presentation, target: str, budget: Budget) -> Finding:
     from lowindex.quotients import count_onto
 
     counts = count_onto(group, target, budget=budget)
     facts = {"order": counts.order, "epimorphisms": counts.epimorphisms, "kernels": counts.kernels, "complete": counts.complete}
     verdict = "quotient" if counts.kernels else "no quotient" if counts.complete else UNDECIDED
-    return verdict, facts, None
+    return Finding(verdict, facts)
 
 
-def _smallest(group: Presentation, bound: int, budget: Budget) -> tuple[str, dict[str, Any], str | None]:
+def _smallest(group: Presentation, bound: int, budget: Budget) -> Finding:
     from lowindex.quotients import NormalSubgroups, describe_image
 
     search = NormalSubgroups(group, bound, budget)
@@ -78,20 +86,5 @@ def _smallest(group: Presentation, bound: int, budget: Budget) -> tuple[str, dic
         moves = table.permutations
         if any(any(p[q[i]] != q[p[i]] for i in range(table.index)) for p in moves for q in moves):
             image = describe_image(moves)
-            return "quotient", {"order": table.index, "image": image.name or image.adjectives, "complete": True}, None
-    return ("no quotient" if search.complete_to >= bound else UNDECIDED), {"complete_to": search.complete_to}, None
-
-
-def _betti(group: Presentation, bound: int, budget: Budget) -> tuple[str, dict[str, Any], str | None]:
-    from lowindex.algebra import abelianization
-    from lowindex.cosets import subgroup_presentation
-    from lowindex.search import subgroups_by_index
-
-    reached = 0
-    for found in subgroups_by_index(group, bound, budget=budget):
-        reached = max(reached, found.index - 1)
-        subgroup = subgroup_presentation(group, found.table)
-        homology = abelianization(subgroup.rank, subgroup.relators)
-        if homology.betti:
-            return "infinite", {"index": found.index, "homology": str(homology)}, None
-    return UNDECIDED if budget.exhausted else "none", {"complete_to": reached if budget.exhausted else bound}, None
+            return Finding("quotient", {"order": table.index, "image": image.name or image.adjectives, "complete": True})
+    return Finding("no quotient" if search.complete_to >= bound else UNDECIDED, {"complete_to": search.complete_to})

@@ -54,29 +54,40 @@ class SearchProgress:
 
     def save(self, path: str | Path) -> None:
         """Write the file in one step: a kill leaves the old one or the new one. InputError when it cannot be written."""
-        text = json.dumps({**self._title(), **self._content()}, ensure_ascii=False)
         beside = Path(f"{path}.new")
         try:
             with open(beside, "w", encoding="utf-8") as file:
-                file.write(text)
+                file.write(self.text())
                 file.flush()
                 os.fsync(file.fileno())
             os.replace(beside, path)
         except OSError as error:
             raise InputError(f"{str(path)!r} cannot be written: {error.strerror}; name another file") from None
 
+    def text(self) -> str:
+        """The whole state as text."""
+        return json.dumps({**self._title(), **self._content()}, ensure_ascii=False)
+
     @classmethod
     def load(cls, path: str | Path, task: Task, *, listing: bool) -> SearchProgress:
         """Read a file of the same search. InputError when it is another one or damaged."""
-        progress = cls(task, listing=listing)
         named = repr(str(path)[:80])
         try:
             if os.path.getsize(path) > LARGEST_FILE:
                 raise ValueError
-            value = json.loads(Path(path).read_text(encoding="utf-8"))
-            title = {key: value[key] for key in progress._title()}
+            return cls.read(Path(path).read_text(encoding="utf-8"), task, listing=listing, named=named)
         except OSError as error:
             raise InputError(f"{named} cannot be read: {error.strerror}") from None
+        except ValueError:
+            raise InputError(f"{named} is no file of an interrupted search; name another file") from None
+
+    @classmethod
+    def read(cls, text: str, task: Task, *, listing: bool, named: str) -> SearchProgress:
+        """Read the state of the same search from text. InputError when it is another one or damaged; it says `named`."""
+        progress = cls(task, listing=listing)
+        try:
+            value = json.loads(text)
+            title = {key: value[key] for key in progress._title()}
         except (ValueError, TypeError, KeyError, RecursionError):
             raise InputError(f"{named} is no file of an interrupted search; name another file") from None
         if title != progress._title():

@@ -12,12 +12,13 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator, Sequence
 from concurrent.futures import FIRST_COMPLETED, Executor, Future, wait
 from dataclasses import dataclass
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
 from lowindex.budget import Budget
-from lowindex.search.search import Block, SubgroupSearch
+from lowindex.search.search import Block, SubgroupClass, SubgroupSearch
 from lowindex.search.task import ROOT, Place, Task
 
 STEPS = 10_000_000
@@ -32,8 +33,8 @@ PIECES = 6
 
 @dataclass(frozen=True)
 class Part:
-    """What was found from a place on: `counts` as in a search, the nodes, trials and steps, the subgroups if they were listed; `rest`:
-    what the part left undone."""
+    """What was found from a place on: `counts` as in a search, the nodes, trials and steps, the subgroups if they were listed, what was
+    kept of them; `rest`: what the part left undone."""
 
     place: Place
     counts: NDArray[np.int64]
@@ -41,16 +42,28 @@ class Part:
     trials: int
     steps: int
     blocks: tuple[Block, ...]
+    kept: tuple[Any, ...]
     rest: tuple[Place, ...]
 
 
-def search_part(task: Task, place: Place, *, steps: int, pieces: int, listing: bool) -> Part:
-    """Search from a place on for about this many steps; what is left is cut into pieces. A function of picklable values, for executors."""
+Keep = Callable[[Task, SubgroupClass], Any]
+"""A function of module level that says what is to be kept of a subgroup, None for nothing."""
+
+
+def search_part(task: Task, place: Place, *, steps: int, pieces: int, listing: bool, keep: Keep | None = None) -> Part:
+    """Search from a place on for about this many steps; what is left is cut into pieces. A function of picklable values, for executors.
+    With `keep` the subgroups are looked at where they are found."""
     search = SubgroupSearch.at(task, place, budget=Budget(max(1, steps // 100)))
-    blocks = tuple(search.blocks()) if listing else ()
-    if not listing:
+    blocks: list[Block] = []
+    kept: list[Any] = []
+    if not listing and keep is None:
         search.count()
-    return Part(place, search.counts, search.nodes, search.trials, search.steps, blocks, tuple(search.places(pieces)))
+    else:
+        for block in search.blocks():
+            blocks += [block] if listing else []
+            kept += [value for found in block if (value := keep(task, found)) is not None] if keep is not None else []
+    rest = tuple(search.places(pieces))
+    return Part(place, search.counts, search.nodes, search.trials, search.steps, tuple(blocks), tuple(kept), rest)
 
 
 def walk(
@@ -63,6 +76,7 @@ def walk(
     workers: int = 1,
     part_steps: int = STEPS,
     first_steps: int = FIRST_STEPS,
+    keep: Keep | None = None,
 ) -> Iterator[tuple[Part, list[Place]]]:
     """The parts of a search with the places that are left after each, in serial order. Ends when nothing is left or the budget is
     spent. Without an executor the parts are done here, one after the other."""
@@ -71,13 +85,14 @@ def walk(
 
     def submit(place: Place) -> Future[Part]:
         assert executor is not None
-        return executor.submit(search_part, task, place, steps=part_steps, pieces=pieces, listing=listing)
+        return executor.submit(search_part, task, place, steps=part_steps, pieces=pieces, listing=listing, keep=keep)
 
     first, steps = True, first_steps
     try:
         while order and not budget.exhausted:
             if executor is None or first:
-                _settle(order, order[0], search_part(task, order[0].place, steps=steps, pieces=pieces, listing=listing))
+                here = min(steps, 100 * budget.left + 1000)
+                _settle(order, order[0], search_part(task, order[0].place, steps=here, pieces=pieces, listing=listing, keep=keep))
                 first, steps = False, part_steps
             else:
                 _keep_busy(order, 2 * workers, submit)

@@ -15,6 +15,7 @@ import time
 from collections.abc import Iterator
 from concurrent.futures import ThreadPoolExecutor
 from contextlib import contextmanager
+from dataclasses import replace
 from pathlib import Path
 
 import pytest
@@ -22,6 +23,7 @@ import pytest
 from lowindex.cli.main import main
 from lowindex.errors import InputError
 from lowindex.scan import Item, Result, Store
+from lowindex.scan.store import APPLICATION, MIGRATIONS
 
 ROOT = Path(__file__).resolve().parents[2]
 ITEMS = [Item(k, f"g{k}", {"n": k}, f"digest{k}", f"⟨a | a^{k}⟩") for k in range(1, 6)]
@@ -62,6 +64,32 @@ def test_readers_while_a_scan_writes(tmp_path: Path) -> None:
         for item in ITEMS:
             writer.record(item.digest, result())
             assert sum(found is not None for _, found in reader.results("scan", "hunt")) == item.place
+
+
+def test_checkpoints(tmp_path: Path) -> None:
+    """Kept with an unfinished result, replaced by the next one, gone with a decided one, kept when a run failed."""
+    with Store(tmp_path / "s", create=True) as store:
+        store.enter("scan", ITEMS)
+        for verdict, state, kept in (("undecided", "1", "1"), ("undecided", "2", "2"), ("error", None, "2"), ("none", None, None)):
+            store.record("digest1", replace(result(verdict), checkpoint=state))
+            assert store.checkpoint("digest1", "hunt") == kept
+        assert store.checkpoint("digest2", "hunt") is None
+
+
+def test_a_store_of_the_first_schema_is_taken_over(tmp_path: Path) -> None:
+    path = tmp_path / "s"
+    with sqlite3.connect(path) as connection:
+        for statement in MIGRATIONS[0].split(";"):
+            connection.execute(statement)
+        connection.execute(f"PRAGMA application_id = {APPLICATION}")
+        connection.execute("PRAGMA user_version = 1")
+        connection.execute("INSERT INTO groups VALUES ('d', '⟨a | ⟩')")
+        connection.execute("INSERT INTO members VALUES ('scan', 1, NULL, '{}', 'd')")
+    connection.close()
+    with Store(path) as store:
+        store.record("d", replace(result("undecided"), checkpoint="here"))
+        assert store.checkpoint("d", "hunt") == "here"
+        assert len(list(store.results("scan", "hunt"))) == 1
 
 
 def test_made_by_several_at_once(tmp_path: Path) -> None:
