@@ -55,6 +55,44 @@ def test_subgroups_given_by_words() -> None:
     assert enumerate_cosets(e7, parabolic, budget=Budget()).table.index == 56  # type: ignore[union-attr]
 
 
+LARGE = {
+    # J. E. Humphreys, Reflection Groups and Coxeter Groups (1990)
+    "E6": (coxeter.coxeter(6, {**coxeter.path(3, 3, 3, 3), (2, 5): 3, (4, 5): 2}), 51_840),
+    "E7": (coxeter.coxeter(7, {**coxeter.path(3, 3, 3, 3, 3), (2, 6): 3, (5, 6): 2}), 2_903_040),
+    "S9": (coxeter.coxeter(8, coxeter.path(3, 3, 3, 3, 3, 3, 3)), 362_880),
+    # H. Behr, J. Mennicke, A presentation of the groups PSL(2,p), Canad. J. Math. 20 (1968) 1432-1438 (from memory); order p(p^2-1)/2
+    **{f"PSL(2,{p})": (f"⟨s, t | s^{p}, t^2, (s t)^3, (s^2 t s^{(p + 1) // 2} t)^3⟩", p * (p * p - 1) // 2) for p in (11, 23, 37, 61)},
+}
+
+
+@pytest.mark.parametrize("name", LARGE)
+def test_large_orders(name: str) -> None:
+    text, order = LARGE[name]
+    found = enumerate_cosets(Presentation.parse(text), budget=Budget(), max_cosets=5_000_000)
+    assert found.table is not None
+    assert found.table.index == order
+    if name == "E7":
+        assert found.peak == order  # Felsch defines no coset in vain here
+
+
+def test_more_cosets_than_allowed() -> None:
+    text = LARGE["E7"][0]
+    for strategy in STRATEGIES:
+        found = enumerate_cosets(Presentation.parse(text), budget=Budget(), max_cosets=100_000, strategy=strategy)
+        assert found.table is None
+        assert found.peak <= 100_000
+
+
+@pytest.mark.slow
+def test_eighty_million_entries() -> None:
+    """The Coxeter group B8 over 1: 10,321,920 cosets in 8 columns (Humphreys 1990)."""
+    found = enumerate_cosets(
+        Presentation.parse(coxeter.coxeter(8, coxeter.path(4, 3, 3, 3, 3, 3, 3))), budget=Budget(), max_cosets=12_500_000, strategy="felsch"
+    )
+    assert found.table is not None
+    assert found.table.index == 2**8 * 40_320
+
+
 def test_infinite_groups_end_without_a_table() -> None:
     for text in ("⟨a | ⟩", "⟨a, b | [a,b]⟩", "⟨a, b, c, d | a^-1ba=b^2, b^-1cb=c^2, c^-1dc=d^2, d^-1ad=a^2⟩"):
         found = enumerate_cosets(Presentation.parse(text), budget=Budget(), max_cosets=20_000)

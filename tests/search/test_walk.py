@@ -222,3 +222,28 @@ def test_the_log_adds_up(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> 
 def test_blocks_are_the_classes() -> None:
     blocks = list(SubgroupSearch(GROUP, 10, budget=Budget()).blocks())
     assert [(x.table, x.length) for block in blocks for x in block] == [(x.table, x.length) for x in SubgroupSearch(GROUP, 10, budget=Budget())]
+
+
+def test_counting_takes_no_memory() -> None:
+    """A million subgroups counted in the memory of a few thousand: within ten per cent."""
+    code = (
+        "import resource; from lowindex import Presentation; from lowindex.budget import Budget; from lowindex.search import SubgroupSearch\n"
+        "search = SubgroupSearch(Presentation.parse('⟨a, b | ⟩'), {index}, budget=Budget()); search.count()\n"
+        "print(int(search.counts[1].sum()), resource.getrusage(resource.RUSAGE_SELF).ru_maxrss)"
+    )
+    found = {}
+    for index in (6, 9):
+        done = subprocess.run([sys.executable, "-c", code.format(index=index)], capture_output=True, text=True, check=True, cwd=ROOT_FOLDER)
+        found[index] = [int(number) for number in done.stdout.split()]
+    assert found[6][0] < 4_000 < 10**6 < found[9][0]
+    assert found[9][1] < 1.1 * found[6][1]
+
+
+def test_the_tool_that_measures() -> None:
+    done = subprocess.run(
+        [sys.executable, "tools/bench.py", "--only", "plain", "--rounds", "1"], capture_output=True, text=True, check=False, cwd=ROOT_FOLDER
+    )
+    assert done.returncode == 0, done.stderr
+    rows = [line.split("|")[-2].strip() for line in done.stdout.splitlines() if line.startswith("| ")][1:]
+    assert len(rows) == 4
+    assert all(float(row.replace(",", "")) > 10 for row in rows)
