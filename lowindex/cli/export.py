@@ -7,12 +7,14 @@ from pathlib import Path
 
 from lowindex.checker import Refused, check
 from lowindex.cli.console import show
+from lowindex.cli.options import write_into
 from lowindex.cli.source import read_text
 from lowindex.errors import InputError
 
 EXAMPLE = """examples:
   lowindex export p4.json --to text
   lowindex export p4.json --to latex --output p4.tex
+  lowindex export p4.json --to rocq --output p4-proof
 
 exit codes: 0 done, 1 the checker refused the witness, 2 unusable file"""
 
@@ -28,8 +30,8 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog=EXAMPLE,
     )
     parser.add_argument("witness", metavar="WITNESS", help="a witness file")
-    parser.add_argument("--to", choices=("text", "latex"), default="text", help="plain text (default) or LaTeX")
-    parser.add_argument("--output", metavar="PATH", help="the file to write; else standard output")
+    parser.add_argument("--to", choices=("text", "latex", "rocq"), default="text", help="plain text (default), LaTeX, a Rocq proof")
+    parser.add_argument("--output", metavar="PATH", help="the file to write, for rocq a folder; else standard output")
     parser.set_defaults(run=run)
 
 
@@ -44,7 +46,14 @@ def run(arguments: argparse.Namespace) -> int:
     except Refused as reason:
         show(f"{arguments.witness}: refused: {reason}")
         return 1
-    page = {"text": export.text, "latex": export.latex}[arguments.to](export.Reading(Witness(text.strip())))
+    reading = export.Reading(Witness(text.strip()))
+    if arguments.to == "rocq":
+        if arguments.output is None:
+            raise InputError("--to rocq writes several files; name a folder with --output")
+        for name, content in export.rocq(reading).items():
+            write_into(arguments.output, name, content)
+        return 0
+    page = {"text": export.text, "latex": export.latex}[arguments.to](reading)
     if arguments.output is None:
         show(page.rstrip("\n"))
         return 0

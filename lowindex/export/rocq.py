@@ -1,0 +1,209 @@
+"""Witnesses as scripts for the Rocq (Coq) proof assistant, version 8.16 or later, standard library only.
+
+A script holds the presentation, the table, the certificate as data and one theorem whose proof is a computation by the soundness
+theorems of Prelude.v, which is written beside it unchanged. Before anything is written the checks of the theorem are done here once more.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Sequence
+from importlib.resources import files
+
+from lowindex.errors import InputError
+from lowindex.export.certificate import AffineCertificate, MovedWord, NilpotentCertificate, TrivialWord, certificate
+from lowindex.export.reading import Factor, Reading
+from lowindex.words import Word
+
+PRELUDE = "Prelude.v"
+MOST_LEMMAS = 20_000
+MOST_LETTERS = 2_000_000
+
+
+def rocq(reading: Reading) -> dict[str, str]:
+    """The files of the export by name: the prelude and Witness.v. InputError when the script cannot say what the witness proves."""
+    found = certificate(reading)
+    if found.size > MOST_LETTERS or len(reading.lemmas) > MOST_LEMMAS:
+        raise InputError(f"this proof is too long for a script ({found.size} letters, {len(reading.lemmas)} lemmas); use --to latex")
+    found.verify()
+    script = _Script(reading)
+    if isinstance(found, NilpotentCertificate):
+        script.nilpotent(found)
+    elif isinstance(found, AffineCertificate):
+        script.affine(found)
+    elif isinstance(found, MovedWord):
+        script.moved(found)
+    else:
+        script.trivial(found)
+    prelude = files("lowindex.export").joinpath(PRELUDE).read_text(encoding="utf-8")
+    return {PRELUDE: prelude, "Witness.v": script.text}
+
+
+class _Script:
+    """The text of a script, statement first."""
+
+    def __init__(self, reading: Reading) -> None:
+        self.reading = reading
+        self.names = _constructors(reading.group.names)
+        made = reading.content["made by"]
+        self.parts = [
+            f"(* {_comment(str(reading.group))}\n   {reading.claim}\n"
+            f"   Made by lowindex {made['version']} at effort {made['effort']} from the witness with SHA-256\n"
+            f"   {reading.witness.digest}.\n"
+            f"   To check: coqc -Q . Lowindex {PRELUDE} && coqc -Q . Lowindex Witness.v *)",
+            "From Coq Require Import List Bool Arith ZArith QArith.\nFrom Lowindex Require Import Prelude.\nImport ListNotations.\n"
+            "Open Scope nat_scope.",
+            "(** The presentation *)",
+            f"Inductive generator := {' | '.join(self.names)}.",
+            *(f"Notation p{name[1:]} := ({name}, true).\nNotation n{name[1:]} := ({name}, false)." for name in self.names),
+            self._constant("relators", "list (word generator)", map(self.word, reading.group.relators)),
+            self._constant("gens", "list generator", self.names),
+            "Lemma gens_complete : forall g, In g gens.\nProof. intros []; cbn; repeat (try (left; reflexivity); right). Qed.",
+        ]
+
+    @property
+    def text(self) -> str:
+        """All parts."""
+        return "\n\n".join(self.parts) + "\n"
+
+    def word(self, word: Word) -> str:
+        """A word of the group."""
+        return _list(("p" if x > 0 else "n") + self.names[abs(x) - 1][1:] for x in word)
+
+    def _constant(self, name: str, kind: str, items: Iterable[str]) -> str:
+        return f"Definition {name} : {kind} :=\n  {_list(items)}."
+
+    def _table(self) -> None:
+        """The statement's action on points."""
+        table = self.reading.subgroup.table
+        for name, inverted in (("forward", False), ("backward", True)):
+            rows = [[table.lists[p][2 * k + inverted] for p in range(table.index)] for k in range(table.rank)]
+            cases = " ".join(f"| {g} => {_list(map(str, row))}" for g, row in zip(self.names, rows, strict=True))
+            self.parts.append(f"Definition {name} (g : generator) : list nat :=\n  match g with {cases} end.")
+
+    def _goal(self, word: Word, claim: str) -> None:
+        self.parts.append(f"Definition goal : word generator :=\n  {self.word(word)}.")
+        self.parts.append(f"Definition claim : Prop := {claim}.")
+
+    def _equality(self) -> None:
+        self.parts.append("Scheme Equality for generator.")
+
+    def _derivation(self, found: NilpotentCertificate | TrivialWord) -> None:
+        bases = (f"({_sword(word)}, {_origin(origin)})" for word, origin in found.bases)
+        self.parts.append(self._constant("bases", "list (sword * option (nat * nat))", bases))
+        self.parts.append(self._constant("lemmas", "list (sword * list factor)", (_lemma(*lemma) for lemma in found.lemmas)))
+
+    def nilpotent(self, found: NilpotentCertificate) -> None:
+        """A nilpotent subgroup of finite index."""
+        self.parts.append("(** The coset table: images of the points under the generators and their inverses *)")
+        self._table()
+        n, c = self.reading.index, found.nilpotency_class
+        self.parts.append(f"(** Claim: the stabiliser of point 0 has index {n} and is nilpotent of class at most {c}. *)")
+        self.parts.append(
+            "Definition claim : Prop :=\n  is_subgroup relators (stabiliser forward backward) /\\ "
+            f"has_index (stabiliser forward backward) {n} /\\\n  class_at_most relators (stabiliser forward backward) {c}."
+        )
+        self.parts.append("(** The certificate *)")
+        self._equality()
+        self.parts.append(self._constant("transversal", "list (word generator)", map(self.word, found.transversal)))
+        edges = (f"({point}, {self.names[k - 1]})" for point, k in found.edges)
+        self.parts.append(self._constant("edges", "list (nat * generator)", edges))
+        self.parts.append(self._constant("definitions", "list sword", map(_sword, found.definitions)))
+        self._derivation(found)
+        chain = (f"({symbol}, {weight}, ({j}, {i}))" for symbol, weight, (j, i) in found.chain)
+        self.parts.append(self._constant("chain", "list (nat * nat * (nat * nat))", chain))
+        self.parts.append(self._constant("images", "list (sword * list factor)", (_lemma(*image) for image in found.images)))
+        commutators = (f"({j}, {i}, {_lemma(*proof)})" for j, i, proof in found.commutators)
+        self.parts.append(self._constant("commutators", "list (nat * nat * (sword * list factor))", commutators))
+        self.parts.append(
+            "Theorem result : claim.\nProof.\n  refine (check_sound generator_beq internal_generator_dec_bl gens gens_complete relators "
+            f"forward backward {n} transversal\n    edges definitions bases lemmas chain {c} images commutators _).\n"
+            "  vm_cast_no_check (eq_refl true).\nQed."
+        )
+        self.parts.append(
+            "Corollary group_is_virtually_nilpotent : virtually_nilpotent relators.\n"
+            f"Proof. exists (stabiliser forward backward), {n}, {c}. exact result. Qed."
+        )
+        self.parts.append("Print Assumptions result.")
+
+    def affine(self, found: AffineCertificate) -> None:
+        """An affine action of a subgroup."""
+        self.parts.append("(** Claim: no subgroup of finite index is nilpotent. *)")
+        self.parts.append("Definition claim : Prop := ~ virtually_nilpotent relators.")
+        self.parts.append("(** The certificate: a table, an affine map of the rationals on every edge, a dilation, a translation *)")
+        self._table()
+        cases = " ".join(
+            f"| {name} => {_list(f'(({m.numerator}) # {m.denominator}, ({b.numerator}) # {b.denominator})' for m, b in row)}"
+            for name, row in zip(self.names, found.labels, strict=True)
+        )
+        self.parts.append(f"Definition labels (g : generator) : list (Q * Q) :=\n  match g with {cases} end.")
+        self.parts.append(f"Definition dilation : word generator :=\n  {self.word(found.dilation)}.")
+        self.parts.append(f"Definition translation : word generator :=\n  {self.word(found.translation)}.")
+        self.parts.append(
+            "Theorem result : claim.\nProof.\n  refine (@check_affine_sound generator gens gens_complete relators forward backward "
+            f"{self.reading.index} labels dilation translation _).\n  vm_cast_no_check (eq_refl true).\nQed."
+        )
+        self.parts.append("Print Assumptions result.")
+
+    def trivial(self, found: TrivialWord) -> None:
+        """A word that is trivial."""
+        self.parts.append("(** Claim: this word is trivial. *)")
+        self._goal(found.word, "eqv relators goal []")
+        self._equality()
+        self._derivation(found)
+        self.parts.append(f"Definition proof : sword * list factor :=\n  {_lemma(*found.proof)}.")
+        self.parts.append(
+            "Theorem result : claim.\nProof.\n  refine (check_word_sound generator_beq internal_generator_dec_bl relators gens "
+            "bases lemmas goal proof _).\n  vm_cast_no_check (eq_refl true).\nQed."
+        )
+        self.parts.append("Print Assumptions result.")
+
+    def moved(self, found: MovedWord) -> None:
+        """A word that is not trivial."""
+        self.parts.append("(** Claim: this word is not trivial. *)")
+        self._goal(found.word, "~ eqv relators goal []")
+        self.parts.append("(** The certificate: an action that moves a point under the word *)")
+        self._table()
+        self.parts.append(
+            "Theorem result : claim.\nProof.\n  refine (@check_moved_sound generator gens relators forward backward "
+            f"{self.reading.index} {found.point} goal gens_complete _).\n  vm_cast_no_check (eq_refl true).\nQed."
+        )
+        self.parts.append("Print Assumptions result.")
+
+
+def _constructors(names: Sequence[str]) -> list[str]:
+    """A constructor for every generator: g_ and its name, or its number when the name is not of plain letters."""
+    plain = all(re.fullmatch(r"[A-Za-z0-9_]+", name) for name in names)
+    return [f"g_{name}" if plain else f"g_{k}" for k, name in enumerate(names, 1)]
+
+
+def _comment(text: str) -> str:
+    """Text that cannot end or open a comment or a string."""
+    return text.replace("(*", "( *").replace("*)", "* )").replace('"', "'")
+
+
+def _list(items: Iterable[str]) -> str:
+    """A list, broken into lines."""
+    lines, width = [""], 0
+    for number, item in enumerate(items):
+        piece = ("; " if number else "") + item
+        if width + len(piece) > 130:
+            lines.append("")
+            width = 0
+        lines[-1] += piece
+        width += len(piece)
+    return "[" + "\n   ".join(lines) + "]"
+
+
+def _sword(word: Word) -> str:
+    """A word in symbols or places, which count from 0 there."""
+    return _list(f"({abs(x) - 1}, {'true' if x > 0 else 'false'})" for x in word)
+
+
+def _lemma(word: Word, factors: Sequence[Factor]) -> str:
+    spelled = (f"({_sword(u)}, {j}, {'true' if e > 0 else 'false'})" for u, j, e in factors)
+    return f"({_sword(word)}, {_list(spelled)})"
+
+
+def _origin(origin: tuple[int, int] | None) -> str:
+    return "None" if origin is None else f"Some ({origin[0]}, {origin[1]})"
