@@ -14,6 +14,7 @@ from lowindex.errors import InputError
 EXAMPLE = """examples:
   lowindex export p4.json --to text
   lowindex export p4.json --to latex --output p4.tex
+  lowindex export p4.json --to html --output p4.html
   lowindex export p4.json --to rocq --output p4-proof
 
 exit codes: 0 done, 1 the checker refused the witness, 2 unusable file"""
@@ -30,7 +31,8 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
         epilog=EXAMPLE,
     )
     parser.add_argument("witness", metavar="WITNESS", help="a witness file")
-    parser.add_argument("--to", choices=("text", "latex", "rocq"), default="text", help="plain text (default), LaTeX, a Rocq proof")
+    kinds = "plain text (default), LaTeX, a page for a browser, a script for the Rocq proof assistant"
+    parser.add_argument("--to", choices=("text", "latex", "html", "rocq"), default="text", help=kinds)
     parser.add_argument("--output", metavar="PATH", help="the file to write, for rocq a folder; else standard output")
     parser.set_defaults(run=run)
 
@@ -53,7 +55,7 @@ def run(arguments: argparse.Namespace) -> int:
         for name, content in export.rocq(reading).items():
             write_into(arguments.output, name, content)
         return 0
-    page = {"text": export.text, "latex": export.latex}[arguments.to](reading)
+    page = {"text": export.text, "latex": export.latex, "html": export.page}[arguments.to](reading)
     if arguments.output is None:
         show(page.rstrip("\n"))
         return 0

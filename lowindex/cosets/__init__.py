@@ -2,7 +2,7 @@
 
 from lowindex.cosets.encoding import Columns, Encoding, plain_encoding
 from lowindex.cosets.enumeration import Enumeration, EnumerationLog, enumerate_cosets, logged_enumeration
-from lowindex.cosets.graph import graph_text, schreier_graph
+from lowindex.cosets.graph import LARGEST_PICTURE, graph_text, schreier_graph
 from lowindex.cosets.operations import (
     abelian_table,
     compose,
@@ -18,6 +18,7 @@ from lowindex.cosets.schreier import SchreierTree
 from lowindex.cosets.table import CosetTable, column
 
 __all__ = [
+    "LARGEST_PICTURE",
     "Columns",
     "CosetTable",
     "Encoding",

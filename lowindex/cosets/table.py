@@ -104,6 +104,12 @@ class CosetTable:
     def __hash__(self) -> int:
         return hash((self.rows.shape, self.rows.tobytes()))
 
+    def _repr_svg_(self) -> str | None:
+        """The Schreier graph in a notebook, when it is small enough for a picture."""
+        from lowindex.cosets.graph import LARGEST_PICTURE, graph_text
+
+        return graph_text(self, [f"x{k}" for k in range(1, self.rank + 1)], "svg") if self.index <= LARGEST_PICTURE else None
+
     def __repr__(self) -> str:
         return f"CosetTable(index={self.index}, rank={self.rank})"
 

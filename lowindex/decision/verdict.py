@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, field
+from html import escape
 from typing import Any
 
 from lowindex.witness import Witness
@@ -35,6 +36,13 @@ class Verdict:
     generators: tuple[Word, ...] = ()
     witness: Witness | None = field(default=None, repr=False)
     open_at: int | None = None
+
+    def _repr_html_(self) -> str:
+        """The verdict in a notebook."""
+        shown = ("index", "class", "hirsch_length", "growth_degree", "finite_order", "reason", "effort")
+        facts = {key.replace("_", " "): value for key, value in self.as_json().items() if key in shown and value is not None}
+        rows = "".join(f"<tr><th>{key}</th><td>{escape(str(value))}</td></tr>" for key, value in facts.items())
+        return f"<p>{escape(str(self.presentation))}: <strong>{self.verdict}</strong></p><table>{rows}</table>"
 
     def as_json(self, witness_file: str | None = None) -> dict[str, Any]:
         """The object that `lowindex hunt --json` prints."""

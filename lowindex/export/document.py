@@ -27,10 +27,16 @@ class Paragraph:
 
 @dataclass(frozen=True)
 class Items:
-    """A list; `labels` stand before the items."""
+    """A list; `labels` stand before the items, `proofs`, if there are any, behind them."""
 
     texts: tuple[str, ...]
     labels: tuple[str, ...]
+    proofs: tuple[str, ...] = ()
+
+    @property
+    def whole(self) -> list[str]:
+        """Every item with its proof."""
+        return [text + proof for text, proof in zip(self.texts, self.proofs, strict=True)] if self.proofs else list(self.texts)
 
 
 @dataclass(frozen=True)
@@ -56,7 +62,7 @@ def as_text(title: str, blocks: list[Block]) -> str:
             lead = f"{block.kind}. " if block.kind else ""
             parts += [_filled(lead + _plain(block.text), "", ""), ""]
         elif isinstance(block, Items):
-            for label, text in zip(block.labels, block.texts, strict=True):
+            for label, text in zip(block.labels, block.whole, strict=True):
                 parts.append(_filled(_plain(text), f"  {_plain(label)}  "))
             parts.append("")
         else:
@@ -106,7 +112,7 @@ def as_latex(title: str, blocks: list[Block]) -> str:
                 parts += [block.text, ""]
         elif isinstance(block, Items):
             parts.append(r"\begin{list}{}{\setlength{\leftmargin}{4em}\setlength{\labelwidth}{3.5em}\setlength{\itemsep}{1pt}}\raggedright")
-            parts += [rf"\item[{label}] {text}" for label, text in zip(block.labels, block.texts, strict=True)]
+            parts += [rf"\item[{label}] {text}" for label, text in zip(block.labels, block.whole, strict=True)]
             parts += [r"\end{list}", ""]
         else:
             parts.append(r"\begin{thebibliography}{99}")

@@ -16,8 +16,9 @@ def lemmas(reading: Reading, names: Names) -> tuple[list[Block], list[Block]]:
     if not reading.lemmas:
         return [], []
     items = Items(
-        tuple(_lemma(reading, names, k) for k in range(len(reading.lemmas))),
+        tuple(f"${names.word(word)} = 1$" for word, _ in reading.lemmas),
         tuple(f"($L_{{{k + 1}}}$)" for k in range(len(reading.lemmas))),
+        tuple(_proof(reading, names, k) for k in range(len(reading.lemmas))),
     )
     text = (
         "Each of these equations follows from earlier ones: its left side is, in the free group, the product of conjugates of left sides "
@@ -38,16 +39,15 @@ def label(reading: Reading, number: int) -> str:
     return f"L_{{{number - reading.first_lemma + 1}}}"
 
 
-def _lemma(reading: Reading, names: Names, k: int) -> str:
-    word, factors = reading.lemmas[k]
-    statement = f"${names.word(word)} = 1$"
+def _proof(reading: Reading, names: Names, k: int) -> str:
+    factors = reading.lemmas[k][1]
     chain = reading.replacements(k)
     if len(factors) <= LONGEST_CHAIN and max(len(step) for step, _ in chain) <= LONGEST_WORD:
         steps = [f"${names.word(step)}$ by $({label(reading, j)})$" for step, j in chain[1:]]
-        return f"{statement}: it becomes " + ", then ".join(steps) + "."
+        return ": it becomes " + ", then ".join(steps) + "."
     shown = []
     for u, j, sign in factors:
         power = "^{-1}" if sign < 0 else ""
         name = f"{label(reading, j)}{power}"
         shown.append(rf"{names.word(u)}\,\cdot {name}\cdot\,({names.word(u)})^{{-1}}" if u else name)
-    return f"{statement}, the product of " + ", ".join(f"${item}$" for item in shown) + "."
+    return ", the product of " + ", ".join(f"${item}$" for item in shown) + "."

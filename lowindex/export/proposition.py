@@ -28,13 +28,14 @@ def blocks(reading: Reading) -> list[Block]:
 
 def text(reading: Reading) -> str:
     """Plain text."""
-    return as_text(_title(reading), blocks(reading))
+    return as_text(title(reading), blocks(reading))
 
 
 def latex(reading: Reading) -> str:
     """A LaTeX document."""
-    return as_latex(_title(reading), blocks(reading))
+    return as_latex(title(reading), blocks(reading))
 
 
-def _title(reading: Reading) -> str:
+def title(reading: Reading) -> str:
+    """What the page shows."""
     return CLAIMS[reading.claim][0]
