@@ -1281,3 +1281,58 @@ Proof.
 Qed.
 
 End Affine.
+
+(** * Long derivations as text *)
+
+From Coq.Strings Require Import Byte.
+
+(** Text that is read without becoming a term of thousands of nested constructors: one constructor for a character. *)
+Inductive packed : Type := Packed : list byte -> packed.
+Definition packed_bytes (p : packed) : list byte := let '(Packed l) := p in l.
+Declare Scope packed_scope.
+Delimit Scope packed_scope with packed.
+String Notation packed Packed packed_bytes : packed_scope.
+
+(** Numbers in decimal digits, each closed by a blank (a line break counts as one that closes nothing). *)
+Fixpoint numbers (l : list byte) (n : nat) (started : bool) : list nat :=
+  match l with
+  | [] => []
+  | b :: l =>
+    let d := Byte.to_nat b in
+    if (48 <=? d) && (d <=? 57) then numbers l (10 * n + (d - 48)) true
+    else if started then n :: numbers l 0 false else numbers l 0 false
+  end.
+
+(** A word: its length and its letters, 2 k for the letter (k, true) and 2 k + 1 for (k, false). *)
+Fixpoint read_letters (count : nat) (l : list nat) : sword * list nat :=
+  match count, l with
+  | S count, n :: l => let '(w, rest) := read_letters count l in ((Nat.div2 n, Nat.even n) :: w, rest)
+  | _, _ => ([], l)
+  end.
+Definition read_word (l : list nat) : sword * list nat :=
+  match l with [] => ([], []) | count :: l => read_letters count l end.
+
+(** Factors: their number, and for each a word, the number of an equation, 0 or 1 for its inverse. *)
+Fixpoint read_factors (count : nat) (l : list nat) : list factor * list nat :=
+  match count with
+  | O => ([], l)
+  | S count =>
+    match read_word l with
+    | (u, e :: s :: l) => let '(fs, rest) := read_factors count l in ((u, e, s =? 0) :: fs, rest)
+    | (_, l) => ([], l)
+    end
+  end.
+
+(** Lemmas: a word, then its factors, and so on to the end. [fuel] is the number of lemmas. *)
+Fixpoint read_lemmas (fuel : nat) (l : list nat) : list (sword * list factor) :=
+  match fuel with
+  | O => []
+  | S fuel =>
+    match read_word l with
+    | (w, count :: l) => let '(fs, rest) := read_factors count l in (w, fs) :: read_lemmas fuel rest
+    | (w, []) => [(w, [])]
+    end
+  end.
+
+Definition unpacked (count : nat) (text : packed) : list (sword * list factor) :=
+  read_lemmas count (numbers (packed_bytes text) 0 false).

@@ -77,7 +77,8 @@ def _filled(text: str, lead: str, hanging: str = "      ") -> str:
 
 def _plain(text: str) -> str:
     text = re.sub(r"\$(.*?)\$", lambda m: plain(m[1]), text)
-    return re.sub(r"\\cite\{(.*?)\}", r"[\1]", text).replace("~", " ").replace("--", "–").replace("``", '"').replace("''", '"')
+    text = re.sub(r"\\cite\{(.*?)\}", r"[\1]", text)
+    return text.replace("~", " ").replace("--", "–").replace("{-}", "-").replace("``", '"').replace("''", '"')
 
 
 _PREAMBLE = r"""\documentclass{amsart}

@@ -115,7 +115,7 @@ def _inline(text: str) -> str:
 
 
 def _prose(text: str) -> str:
-    text = escape(text.replace("~", "\u00a0").replace("--", "–").replace("``", "“").replace("''", "”"), quote=False)
+    text = escape(text.replace("~", "\u00a0").replace("--", "–").replace("{-}", "-").replace("``", "“").replace("''", "”"), quote=False)
     text = re.sub(r"([A-Z])_\{(\d+)\}", r"\1<sub>\2</sub>", text)
     return re.sub(r"\\cite\{(.*?)\}", r'<a href="#\1">[\1]</a>', text)
 
@@ -127,6 +127,8 @@ def _action(reading: Reading) -> list[str]:
     if table.index <= LARGEST_PICTURE:
         caption = tag("figcaption", "Schreier graph; the dark point is the coset H.")
         parts.append(tag("figure", graph_text(table, reading.group.names, "svg"), caption))
+    else:
+        parts.append(tag("p", f"The Schreier graph has {table.index} points, too many for a picture; its edges stand in the table."))
     columns = [name + sign for name in names for sign in ("", tag("sup", "−1"))]
     head = tag("tr", *(tag("th", column, scope="col") for column in ["point", *columns]))
     rows = [

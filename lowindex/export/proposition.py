@@ -18,12 +18,19 @@ CLAIMS = {
 def blocks(reading: Reading) -> list[Block]:
     """The proposition, its proof, and where it comes from."""
     made_by = reading.content["made by"]
-    digest = " ".join(reading.witness.digest[i : i + 16] for i in range(0, 64, 16))
+    digest = _spaced(reading.witness.digest)
+    effort = made_by["effort"]
     origin = Paragraph(
-        f"This page was made from a witness with the SHA-256 digest {digest}, written by lowindex {made_by['version']} at effort "
-        f"{made_by['effort']} and accepted by its independent checker."
+        f"This page was made from a witness with the SHA-256 digest {digest}, written by lowindex {made_by['version']} at effort {effort} "
+        f"and accepted by its independent checker. The presentation has the SHA-256 digest {_spaced(made_by['digest'])}. To check again: "
+        "``lowindex check WITNESS {-}{-}for PRESENTATION'', or with Python alone ``python -m checker WITNESS'' in a copy of the checker's "
+        f"folder. To make it again, with the same version: ``lowindex hunt PRESENTATION {{-}}{{-}}effort {effort}''."
     )
     return [*CLAIMS[reading.claim][1](reading), origin]
+
+
+def _spaced(digest: str) -> str:
+    return " ".join(digest[i : i + 16] for i in range(0, 64, 16))
 
 
 def text(reading: Reading) -> str:

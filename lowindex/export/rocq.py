@@ -7,17 +7,24 @@ theorems of Prelude.v, which is written beside it unchanged. Before anything is 
 from __future__ import annotations
 
 import re
+import textwrap
 from collections.abc import Iterable, Sequence
 from importlib.resources import files
 
 from lowindex.errors import InputError
-from lowindex.export.certificate import AffineCertificate, MovedWord, NilpotentCertificate, TrivialWord, certificate
+from lowindex.export.certificate import AffineCertificate, Lemma, MovedWord, NilpotentCertificate, TrivialWord, certificate
 from lowindex.export.reading import Factor, Reading
 from lowindex.words import Word
 
 PRELUDE = "Prelude.v"
 MOST_LEMMAS = 20_000
 MOST_LETTERS = 2_000_000
+
+MOST_STRUCTURED = 4_000
+"""Letters of a derivation whose lemmas are written as terms; longer ones are text that the script decodes, which is read far sooner."""
+
+CHUNK = 2_000
+"""Letters in one piece of text: a long one is too much for the reader's stack."""
 
 
 def rocq(reading: Reading) -> dict[str, str]:
@@ -91,7 +98,11 @@ class _Script:
     def _derivation(self, found: NilpotentCertificate | TrivialWord) -> None:
         bases = (f"({_sword(word)}, {_origin(origin)})" for word, origin in found.bases)
         self.parts.append(self._constant("bases", "list (sword * option (nat * nat))", bases))
-        self.parts.append(self._constant("lemmas", "list (sword * list factor)", (_lemma(*lemma) for lemma in found.lemmas)))
+        if found.size <= MOST_STRUCTURED:
+            self.parts.append(self._constant("lemmas", "list (sword * list factor)", (_lemma(*lemma) for lemma in found.lemmas)))
+        else:
+            chunks = [f'unpacked {len(chunk)} "{_packed(chunk)}"%packed' for chunk in _chunks(found.lemmas)]
+            self.parts.append("Definition lemmas : list (sword * list factor) :=\n  " + " ++\n  ".join(chunks) + ".")
 
     def nilpotent(self, found: NilpotentCertificate) -> None:
         """A nilpotent subgroup of finite index."""
@@ -203,6 +214,33 @@ def _sword(word: Word) -> str:
 def _lemma(word: Word, factors: Sequence[Factor]) -> str:
     spelled = (f"({_sword(u)}, {j}, {'true' if e > 0 else 'false'})" for u, j, e in factors)
     return f"({_sword(word)}, {_list(spelled)})"
+
+
+def _chunks(lemmas: Sequence[Lemma]) -> list[list[Lemma]]:
+    """Lemmas one after the other, in pieces of about CHUNK letters."""
+    chunks: list[list[Lemma]] = [[]]
+    letters = 0
+    for word, factors in lemmas:
+        chunks[-1].append((word, factors))
+        letters += len(word) + sum(len(u) + 1 for u, _, _ in factors)
+        if letters > CHUNK:
+            chunks.append([])
+            letters = 0
+    return [chunk for chunk in chunks if chunk]
+
+
+def _packed(lemmas: Sequence[Lemma]) -> str:
+    """Lemmas as numbers: words by length and letters, factors by their number; the prelude says how they are read."""
+    numbers: list[int] = []
+    for word, factors in lemmas:
+        numbers += [*_numbers(word), len(factors)]
+        for u, j, e in factors:
+            numbers += [*_numbers(u), j, int(e < 0)]
+    return textwrap.fill(" ".join(map(str, numbers)), 130) + " "
+
+
+def _numbers(word: Word) -> list[int]:
+    return [len(word), *(2 * (abs(x) - 1) + (x < 0) for x in word)]
 
 
 def _origin(origin: tuple[int, int] | None) -> str:

@@ -106,19 +106,44 @@ class Presentation:
         """SHA-256 of the canonical text, in hexadecimal."""
         return hashlib.sha256(str(self).encode()).hexdigest()
 
-    def _repr_latex_(self) -> str:
-        def tex(word: Word) -> str:
-            return re.sub(r"\^(-?\d+)", r"^{\1}", self._relator_text(word)).replace(" ", r"\,")
+    def spelled(self, word: Word) -> SpelledWord:
+        """A word with the names of the generators, for people and notebooks.
 
-        def tex_name(name: str) -> str:
-            stem, digits = re.fullmatch(r"(.*?)_?(\d*)", name).groups()  # type: ignore[union-attr]
-            return f"{stem}_{{{digits}}}" if digits and stem else name.replace("_", r"\_")
+        >>> print(Presentation.parse("⟨x_1, y | ⟩").spelled((1, 1, -2)))
+        x_1^2 y^-1
+        """
+        return SpelledWord(self, word)
 
-        relators = ", ".join(map(tex, self.relators))
+    def _latex(self, text: str) -> str:
+        """Words as text, in LaTeX."""
+        text = re.sub(r"\^(-?\d+)", r"^{\1}", text).replace(" ", r"\,")
         for name in sorted(self.names, key=len, reverse=True):
-            if tex_name(name) != name:
-                relators = re.sub(rf"(?<![\w'{{]){re.escape(name)}(?![\w'])", lambda _, n=name: tex_name(n), relators)  # type: ignore[misc]
-        return rf"$\langle {', '.join(map(tex_name, self.names))} \mid {relators}\rangle$"
+            if _latex_name(name) != name:
+                text = re.sub(rf"(?<![\w'{{]){re.escape(name)}(?![\w'])", lambda _, n=name: _latex_name(n), text)  # type: ignore[misc]
+        return text
+
+    def _repr_latex_(self) -> str:
+        relators = ", ".join(self._latex(self._relator_text(word)) for word in self.relators)
+        return rf"$\langle {', '.join(map(_latex_name, self.names))} \mid {relators}\rangle$"
+
+
+def _latex_name(name: str) -> str:
+    stem, digits = re.fullmatch(r"(.*?)_?(\d*)", name).groups()  # type: ignore[union-attr]
+    return f"{stem}_{{{digits}}}" if digits and stem else name.replace("_", r"\_")
+
+
+@dataclass(frozen=True)
+class SpelledWord:
+    """A word of a presentation, shown with its names."""
+
+    presentation: Presentation
+    word: Word
+
+    def __str__(self) -> str:
+        return self.presentation.text(self.word)
+
+    def _repr_latex_(self) -> str:
+        return f"${self.presentation._latex(str(self))}$"
 
 
 def parse_file(text: str) -> list[Presentation]:

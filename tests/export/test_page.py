@@ -176,4 +176,6 @@ def test_notebooks() -> None:
     assert picture is not None
     ET.fromstring(picture)
     assert CosetTable.from_permutations([tuple(range(1, 100)) + (0,)])._repr_svg_() is None
-    assert Presentation.parse(GROUPS["p4"])._repr_latex_().startswith("$")
+    group = Presentation.parse("⟨x_12, b | ⟩")
+    assert group._repr_latex_() == r"$\langle x_{12}, b \mid \rangle$"
+    assert group.spelled(group.word("x_12^-3 b"))._repr_latex_() == r"$x_{12}^{-3}\,b$"

@@ -9,7 +9,7 @@ from collections.abc import Iterator
 from pathlib import Path
 
 import pytest
-from corpus import coxeter, cyclic, plane
+from corpus import coxeter, cyclic, plane, space
 
 from lowindex import Presentation, hunt
 from lowindex.cli.main import main
@@ -79,6 +79,39 @@ def test_nilpotent_subgroups(workshop: Path, name: str) -> None:
     assert f"has_index (stabiliser forward backward) {index} /\\" in script
     assert f"class_at_most relators (stabiliser forward backward) {nilpotency_class}." in script
     accepted(workshop, script)
+
+
+README = (Path(__file__).parents[2] / "README.md").read_text(encoding="utf-8")
+EXAMPLES = re.findall(r"^\| `(⟨.*?⟩)` \| (.*?) \|$", README.replace("\\|", "|"), flags=re.M)
+
+
+@pytest.mark.parametrize(("text", "said"), EXAMPLES)
+def test_the_examples_of_the_readme(workshop: Path, text: str, said: str) -> None:
+    found = reading(text)
+    summary = found.content["summary"]
+    facts = {"index": summary["index"], "class": summary.get("class"), "degree": summary.get("growth_degree"), "order": summary.get("finite_order")}
+    assert said.startswith("not virtually") == (found.claim == "not virtually nilpotent")
+    for fact, number in re.findall(r"(index|class|degree|order) (\d+)", said):
+        assert facts[fact] == int(number)
+    accepted(workshop, rocq(found)["Witness.v"])
+
+
+def test_there_are_five_examples() -> None:
+    assert len(EXAMPLES) == 5
+
+
+def test_long_derivations_are_text(workshop: Path) -> None:
+    """A space group of order 48 over its translations: the lemmas stand in strings, and a changed number is noticed."""
+    text = str(space.SpaceGroup(229).without_translations())
+    found = reading(text)
+    script = rocq(found)["Witness.v"]
+    assert "unpacked" not in rocq(reading(POSITIVE["p4"][0]))["Witness.v"]
+    if "unpacked" not in script:
+        script = rocq(reading(str(space.SpaceGroup(230).without_translations())))["Witness.v"]
+    assert "has_index (stabiliser forward backward) 48" in script
+    accepted(workshop, script)
+    start = script.index('unpacked')
+    assert checked(workshop, script[:start] + re.sub(r" 2 (\d+) (\d+) ", r" 2 \2 \1 ", script[start:], count=1)).returncode != 0
 
 
 @pytest.mark.parametrize("name", NEGATIVE)
