@@ -17,6 +17,7 @@ _ROOMS = {
     "CosetTable": "cosets",
     "enumerate_cosets": "cosets",
     "subgroup_presentation": "cosets",
+    "Conditions": "search",
     "SubgroupSearch": "search",
     "subgroups": "search",
     "count_classes": "search",

@@ -9,7 +9,7 @@ from types import TracebackType
 from typing import Any
 
 import lowindex
-from lowindex.errors import LowindexError, NotationError
+from lowindex.errors import InputError, LowindexError, NotationError
 from lowindex.events import Event
 
 
@@ -66,3 +66,39 @@ class Progress:
         if self.bar is not None:
             self.bar.update()
             self.bar.set_postfix_str(event.text[:60])
+
+
+class LoggedBar:
+    """A bar on standard error, when that is a terminal, and a log of one line a step, when one is wanted."""
+
+    def __init__(self, log: str | None, **bar: Any) -> None:
+        self.path = log
+        self.options = bar
+        self.log: Any = None
+        self.bar: Any = None
+
+    def __enter__(self) -> LoggedBar:
+        if self.path is not None:
+            try:
+                self.log = open(self.path, "a", encoding="utf-8")
+            except OSError as error:
+                raise InputError(f"the log {self.path!r} cannot be written: {error.strerror}; name another path") from None
+        if sys.stderr.isatty():
+            from tqdm import tqdm
+
+            self.bar = tqdm(leave=False, **self.options)
+        return self
+
+    def __exit__(self, *_: object) -> None:
+        for thing in (self.log, self.bar):
+            if thing is not None:
+                thing.close()
+
+    def advance(self, steps: int, shown: str, line: str) -> None:
+        """Move the bar, with a text behind it, and log a line."""
+        if self.bar is not None:
+            self.bar.update(steps)
+            self.bar.set_postfix_str(shown)
+        if self.log is not None:
+            self.log.write(line + "\n")
+            self.log.flush()

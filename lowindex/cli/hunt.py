@@ -88,16 +88,12 @@ def _verdicts(groups: list[Presentation], options: list[dict[str, Any]], jobs: i
             with Progress(group.name or "hunt") as progress:
                 yield hunt(group, listen=progress, **chosen)
         return
-    from concurrent.futures import ProcessPoolExecutor
+    from lowindex.workers import processes
 
-    with ProcessPoolExecutor(jobs) as executor:
+    with processes(jobs) as executor:
         waiting = [executor.submit(hunt, group, **chosen) for group, chosen in zip(groups, options, strict=True)]
-        try:
-            for future in waiting:
-                yield future.result()
-        except BaseException:
-            executor.shutdown(wait=False, cancel_futures=True)
-            raise
+        for future in waiting:
+            yield future.result()
 
 
 def _witness_path(name: str | None, number: int, groups: int) -> Path | None:

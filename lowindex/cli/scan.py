@@ -4,11 +4,10 @@ from __future__ import annotations
 
 import argparse
 import os
-import sys
 import time
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING
 
-from lowindex.cli.console import announce_compilation, remark, show
+from lowindex.cli.console import LoggedBar, announce_compilation, remark, show
 from lowindex.cli.executors import cluster, terminated_like_interrupt
 from lowindex.cli.options import require_positive_seconds
 from lowindex.cli.source import read_source, read_text
@@ -79,7 +78,8 @@ def run(arguments: argparse.Namespace) -> int:
         pending = store.pending(scan, task, arguments.effort, again=arguments.again)
         interrupted = False
         try:
-            with _Progress(len(pending), arguments.log) as progress, cluster(arguments.cluster) as executor:
+            progress = _Progress(len(pending), arguments.log)
+            with progress, cluster(arguments.cluster) as executor:
                 run_scan(store, pending, job, jobs=arguments.jobs, report=progress, executor=executor)
         except KeyboardInterrupt:
             interrupted = True
@@ -128,42 +128,20 @@ def _items(arguments: argparse.Namespace) -> tuple[str, list[Item]]:
     return name, items
 
 
-class _Progress:
-    """A bar on a terminal, and the log."""
+class _Progress(LoggedBar):
+    """Decided and undecided members."""
 
     def __init__(self, total: int, log: str | None) -> None:
-        self.total = total
-        self.path = log
-        self.counts = {"decided": 0, "undecided": 0}
-        self.bar: Any = None
-        self.log: Any = None
-
-    def __enter__(self) -> _Progress:
-        if self.path is not None:
-            try:
-                self.log = open(self.path, "a", encoding="utf-8")
-            except OSError as error:
-                raise InputError(f"the log {self.path!r} cannot be written: {error.strerror}; name another path") from None
-        if sys.stderr.isatty():
-            from tqdm import tqdm
-
-            self.bar = tqdm(total=self.total, unit=" groups", leave=False)
-        return self
-
-    def __exit__(self, *_: object) -> None:
-        if self.bar is not None:
-            self.bar.close()
-        if self.log is not None:
-            self.log.close()
+        super().__init__(log, total=total, unit=" groups")
+        self.decided = self.undecided = 0
 
     def __call__(self, item: Item, result: Result) -> None:
         """One member is done."""
-        self.counts["undecided" if result.verdict in ("undecided", "error") else "decided"] += 1
-        if self.bar is not None:
-            self.bar.update()
-            self.bar.set_postfix(self.counts)
-        if self.log is not None:
-            name = item.name or ", ".join(f"{key}={value}" for key, value in item.parameters.items()) or str(item.place)
-            stamp = time.strftime("%Y-%m-%d %H:%M:%S")
-            self.log.write(f"{stamp}  {name}: {result.verdict} in {result.seconds:.2f} s: {result.facts.get('reason', '')}\n")
-            self.log.flush()
+        if result.verdict in ("undecided", "error"):
+            self.undecided += 1
+        else:
+            self.decided += 1
+        name = item.name or ", ".join(f"{key}={value}" for key, value in item.parameters.items()) or str(item.place)
+        stamp = time.strftime("%Y-%m-%d %H:%M:%S")
+        line = f"{stamp}  {name}: {result.verdict} in {result.seconds:.2f} s: {result.facts.get('reason', '')}"
+        self.advance(1, f"{self.decided} decided, {self.undecided} undecided", line)

@@ -5,13 +5,12 @@ from __future__ import annotations
 import argparse
 import json
 import os
-import sys
 import time
 from collections.abc import Iterable
 from concurrent.futures import BrokenExecutor
 from typing import TYPE_CHECKING, Any
 
-from lowindex.cli.console import announce_compilation, remark, show
+from lowindex.cli.console import LoggedBar, announce_compilation, remark, show
 from lowindex.cli.executors import executor, terminated_like_interrupt
 from lowindex.cli.options import require_positive_seconds, write_into
 from lowindex.cli.source import read_source
@@ -114,13 +113,14 @@ def _search(progress: SearchProgress, resumed: bool, arguments: argparse.Namespa
     saved = -SAVE_EVERY  # the first part is saved at once
     code = 130
     try:
-        with terminated_like_interrupt(), executor(arguments.jobs, arguments.cluster) as (pool, workers), _Watch(arguments.log) as watch:
+        bar = LoggedBar(arguments.log, unit=" nodes", unit_scale=True)
+        with terminated_like_interrupt(), executor(arguments.jobs, arguments.cluster) as (pool, workers), bar:
             if not resumed:
                 progress.task = written_best(progress.task, budget)
             parts = walk(progress.task, budget=budget, listing=progress.listing, places=progress.places, executor=pool, workers=workers)
             for part, left in parts:
                 progress.add(part, left)
-                watch(part, progress)
+                bar.advance(part.nodes, f"{int(progress.counts[0].sum())} found", _logged(part))
                 if arguments.resume is not None and time.monotonic() > saved + SAVE_EVERY:
                     progress.save(arguments.resume)
                     saved = time.monotonic()
@@ -138,42 +138,12 @@ def _search(progress: SearchProgress, resumed: bool, arguments: argparse.Namespa
     return code
 
 
-class _Watch:
-    """A line of progress on a terminal, and the log."""
-
-    def __init__(self, log: str | None) -> None:
-        self.path = log
-        self.log: Any = None
-        self.bar: Any = None
-
-    def __enter__(self) -> _Watch:
-        if self.path is not None:
-            try:
-                self.log = open(self.path, "a", encoding="utf-8")
-            except OSError as error:
-                raise InputError(f"the log {self.path!r} cannot be written: {error.strerror}; name another path") from None
-        if sys.stderr.isatty():
-            from tqdm import tqdm
-
-            self.bar = tqdm(unit=" nodes", unit_scale=True, leave=False)
-        return self
-
-    def __exit__(self, *_: object) -> None:
-        for thing in (self.log, self.bar):
-            if thing is not None:
-                thing.close()
-
-    def __call__(self, part: Part, progress: SearchProgress) -> None:
-        """A part is done."""
-        if self.bar is not None:
-            self.bar.update(part.nodes)
-            self.bar.set_postfix_str(f"{int(progress.counts[0].sum())} found")
-        if self.log is not None:
-            path = " ".join(map(str, part.place.path)) or "root"
-            found = int(part.counts[0].sum())
-            ended = "ended" if not part.rest else f"left {len(part.rest)} places"
-            self.log.write(f"after {path} below {part.place.floor}: {part.nodes} nodes, {part.trials} trials, {found} found, {ended}\n")
-            self.log.flush()
+def _logged(part: Part) -> str:
+    """The line of a part in the log."""
+    path = " ".join(map(str, part.place.path)) or "root"
+    found = int(part.counts[0].sum())
+    ended = "ended" if not part.rest else f"left {len(part.rest)} places"
+    return f"after {path} below {part.place.floor}: {part.nodes} nodes, {part.trials} trials, {found} found, {ended}"
 
 
 def _show_counts(group: Presentation, progress: SearchProgress, arguments: argparse.Namespace) -> None:

@@ -306,6 +306,12 @@ def count_classes(presentation: Presentation, index: int, *, budget: Budget) -> 
     return best
 
 
-def subgroups(presentation: Presentation, *, index: int, budget: Budget | None = None) -> SubgroupSearch:
-    """The classes of subgroups of index at most `index`, as an iterator with a budget (none: no limit)."""
-    return SubgroupSearch(presentation, index, budget=budget or Budget())
+def subgroups(
+    presentation: Presentation, *, index: int, budget: Budget | None = None, conditions: Conditions | None = None
+) -> SubgroupSearch:
+    """The classes of subgroups of index at most `index`, as an iterator with a budget (none: no limit), or what `conditions` ask for.
+
+    >>> sorted(item.index for item in subgroups(Presentation.parse("⟨a, b | a^2, b^3⟩"), index=6, conditions=Conditions(normal=True)))
+    [1, 2, 3, 6, 6]
+    """
+    return SubgroupSearch(presentation, index, budget=budget or Budget(), conditions=conditions)
