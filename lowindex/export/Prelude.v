@@ -1336,3 +1336,395 @@ Fixpoint read_lemmas (fuel : nat) (l : list nat) : list (sword * list factor) :=
 
 Definition unpacked (count : nat) (text : packed) : list (sword * list factor) :=
   read_lemmas count (numbers (packed_bytes text) 0 false).
+
+(** * Obstructions by integral matrices *)
+
+Section Linear.
+
+Local Open Scope Q_scope.
+
+Variable gen : Type.
+Variable gens : list gen.
+Hypothesis gens_complete : forall g, In g gens.
+Variable relators : list (word gen).
+Variables forward backward : gen -> list nat.
+Variable n : nat.
+Variable d : nat.
+Notation word := (word gen).
+Notation "u ≡ v" := (eqv relators u v) (at level 70).
+Notation act := (act forward backward).
+Notation act_letter := (act_letter forward backward).
+
+Definition vector := nat -> Q.
+Definition rows := list (list Q).
+(** The map x -> A x + b, A by rows. *)
+Definition map_of := (rows * list Q)%type.
+
+Definition entry (a : rows) (i j : nat) : Q := nth j (nth i a []) 0.
+
+Fixpoint sum (k : nat) (f : nat -> Q) : Q := match k with O => 0 | S k => sum k f + f k end.
+
+Definition linear (a : rows) (x : vector) : vector := fun i => sum d (fun j => entry a i j * x j).
+Definition apply (f : map_of) (x : vector) : vector := fun i => linear (fst f) x i + nth i (snd f) 0.
+
+Definition same_vector (x y : vector) : Prop := forall i, (i < d)%nat -> x i == y i.
+Notation "x ≗ y" := (same_vector x y) (at level 70).
+
+Definition table_of (f : nat -> nat -> Q) : rows := map (fun i => map (f i) (seq 0 d)) (seq 0 d).
+
+(** First f, then g. *)
+Definition after (f g : map_of) : map_of :=
+  (table_of (fun i j => Qred (sum d (fun k => entry (fst g) i k * entry (fst f) k j))),
+   map (fun i => Qred (sum d (fun k => entry (fst g) i k * nth k (snd f) 0) + nth i (snd g) 0)) (seq 0 d)).
+
+Definition delta (i j : nat) : Q := if (i =? j)%nat then 1 else 0.
+Definition identity : map_of := (table_of delta, map (fun _ => 0) (seq 0 d)).
+
+Definition indices : list nat := seq 0 d.
+Definition is_unit_matrix (a : rows) : bool := forallb (fun i => forallb (fun j => Qeq_bool (entry a i j) (delta i j)) indices) indices.
+Definition is_identity_map (f : map_of) : bool :=
+  is_unit_matrix (fst f) && forallb (fun i => Qeq_bool (nth i (snd f) 0) 0) indices.
+
+(** For every generator and point the map of the edge, and the inverse map. *)
+Variable maps : gen -> list (map_of * map_of).
+
+Definition edge_map (p : nat) (l : letter gen) : map_of :=
+  if snd l then fst (nth p (maps (fst l)) (identity, identity))
+  else snd (nth (act_letter p l) (maps (fst l)) (identity, identity)).
+
+Fixpoint effect (p : nat) (w : word) (x : vector) : vector :=
+  match w with [] => x | l :: w => effect (act_letter p l) w (apply (edge_map p l) x) end.
+
+Fixpoint composed (p : nat) (w : word) (f : map_of) : map_of :=
+  match w with [] => f | l :: w => composed (act_letter p l) w (after f (edge_map p l)) end.
+
+Definition along (p : nat) (w : word) : map_of := composed p w identity.
+
+Variables dilation translation : word.
+
+Definition check_linear : bool :=
+  check_table relators gens forward backward n &&
+  forallb (fun g => forallb (fun p => let '(f, f') := nth p (maps g) (identity, identity) in
+    is_identity_map (after f f') && is_identity_map (after f' f)) (points n)) gens &&
+  forallb (fun r => forallb (fun p => is_identity_map (along p r)) (points n)) relators &&
+  (act 0 dilation =? 0)%nat &&
+  forallb (fun i => forallb (fun j => Qle_bool (delta i j) (entry (fst (along 0 dilation)) i j)) indices) indices &&
+  forallb (fun j => existsb (fun i => negb (Qle_bool (entry (fst (along 0 dilation)) i j) (delta i j))) indices) indices &&
+  (act 0 translation =? 0)%nat && is_unit_matrix (fst (along 0 translation)) &&
+  forallb (fun i => Qle_bool 0 (nth i (snd (along 0 translation)) 0)) indices &&
+  existsb (fun i => negb (Qle_bool (nth i (snd (along 0 translation)) 0) 0)) indices.
+
+Lemma in_indices i : In i indices <-> (i < d)%nat.
+Proof. unfold indices. rewrite in_seq. lia. Qed.
+
+Lemma sum_ext k f g : (forall i, (i < k)%nat -> f i == g i) -> sum k f == sum k g.
+Proof. induction k as [|k IH]; intros H; cbn; [reflexivity|]. rewrite IH, (H k) by (intros; try apply H; lia). reflexivity. Qed.
+
+Arguments sum_ext : clear implicits.
+
+Lemma sum_add k f g : sum k (fun i => f i + g i) == sum k f + sum k g.
+Proof. induction k as [|k IH]; cbn; [ring|]. rewrite IH. ring. Qed.
+
+Lemma sum_scale k c f : sum k (fun i => c * f i) == c * sum k f.
+Proof. induction k as [|k IH]; cbn; [ring|]. rewrite IH. ring. Qed.
+
+Lemma sum_zero k : sum k (fun _ => 0) == 0.
+Proof. induction k as [|k IH]; cbn; [reflexivity|]. rewrite IH. ring. Qed.
+
+Lemma sum_swap k m f : sum k (fun i => sum m (fun j => f i j)) == sum m (fun j => sum k (fun i => f i j)).
+Proof.
+  induction k as [|k IH]; cbn; [now rewrite sum_zero|]. rewrite IH, <- sum_add. reflexivity.
+Qed.
+
+Lemma sum_nonneg k f : (forall i, (i < k)%nat -> 0 <= f i) -> 0 <= sum k f.
+Proof.
+  induction k as [|k IH]; intros H; cbn; [lra|]. pose proof (H k (Nat.lt_succ_diag_r k)).
+  assert (0 <= sum k f) by (apply IH; intros; apply H; lia). lra.
+Qed.
+
+Lemma sum_at_least k f i : (i < k)%nat -> (forall i, (i < k)%nat -> 0 <= f i) -> f i <= sum k f.
+Proof.
+  induction k as [|k IH]; intros L H; [lia|]. cbn. destruct (Nat.eq_dec i k) as [->|D].
+  - assert (0 <= sum k f) by (apply sum_nonneg; intros; apply H; lia). lra.
+  - assert (f i <= sum k f) by (apply IH; [lia|intros; apply H; lia]). pose proof (H k (Nat.lt_succ_diag_r k)). lra.
+Qed.
+
+Lemma sum_delta k i x : (i < k)%nat -> sum k (fun j => delta i j * x j) == x i.
+Proof.
+  induction k as [|k IH]; intros L; [lia|]. cbn. unfold delta at 2. destruct (i =? k)%nat eqn:E.
+  - apply Nat.eqb_eq in E. subst. rewrite (sum_ext k _ (fun _ => 0)), sum_zero; [ring|].
+    intros j Lj. unfold delta. replace (k =? j)%nat with false; [ring|]. symmetry. apply Nat.eqb_neq. lia.
+  - apply Nat.eqb_neq in E. rewrite IH by lia. ring.
+Qed.
+
+Lemma nth_map_seq {A} (f : nat -> A) i z : (i < d)%nat -> nth i (map f (seq 0 d)) z = f i.
+Proof.
+  intros L. rewrite (nth_indep _ z (f 0%nat)) by (rewrite map_length, seq_length; exact L).
+  rewrite map_nth, seq_nth by exact L. reflexivity.
+Qed.
+
+Lemma entry_table f i j : (i < d)%nat -> (j < d)%nat -> entry (table_of f) i j = f i j.
+Proof. intros Li Lj. unfold entry, table_of. now rewrite !nth_map_seq by assumption. Qed.
+
+Lemma linear_ext a x y : x ≗ y -> linear a x ≗ linear a y.
+Proof. intros E i Li. apply sum_ext. intros j Lj. now rewrite (E j Lj). Qed.
+
+Lemma linear_add a x y i : linear a (fun j => x j + y j) i == linear a x i + linear a y i.
+Proof. unfold linear. rewrite <- sum_add. apply sum_ext. intros j _. ring. Qed.
+
+Lemma apply_ext f x y : x ≗ y -> apply f x ≗ apply f y.
+Proof. intros E i Li. unfold apply. now rewrite (linear_ext (fst f) E Li). Qed.
+
+Lemma apply_after f g x : apply (after f g) x ≗ apply g (apply f x).
+Proof.
+  intros i Li. unfold apply, linear, after. cbn [fst snd]. rewrite nth_map_seq by exact Li. rewrite Qred_correct.
+  rewrite (sum_ext d _ (fun j => sum d (fun k => entry (fst g) i k * entry (fst f) k j * x j))).
+  2:{ intros j Lj. rewrite entry_table by assumption. rewrite Qred_correct, Qmult_comm, <- sum_scale. apply sum_ext. intros; ring. }
+  rewrite sum_swap.
+  rewrite (sum_ext d (fun j => entry (fst g) i j * (sum d (fun k => entry (fst f) j k * x k) + nth j (snd f) 0)) (fun k => sum d (fun j => entry (fst g) i k * entry (fst f) k j * x j) +
+    entry (fst g) i k * nth k (snd f) 0)).
+  2:{ intros k Lk. assert (E : sum d (fun j => entry (fst g) i k * entry (fst f) k j * x j) == entry (fst g) i k * sum d (fun j => entry (fst f) k j * x j)).
+      { rewrite <- sum_scale. apply sum_ext. intros; ring. }
+      cbn beta. rewrite E. ring. }
+  rewrite sum_add. ring.
+Qed.
+
+Lemma apply_unit f x : is_unit_matrix (fst f) = true -> forall i, (i < d)%nat -> apply f x i == x i + nth i (snd f) 0.
+Proof.
+  intros U i Li. unfold apply, linear. rewrite (sum_ext d _ (fun j => delta i j * x j)).
+  - now rewrite sum_delta.
+  - intros j Lj. unfold is_unit_matrix in U. rewrite forallb_forall in U. specialize (U i (proj2 (in_indices i) Li)).
+    rewrite forallb_forall in U. specialize (U j (proj2 (in_indices j) Lj)). apply Qeq_bool_eq in U. now rewrite U.
+Qed.
+
+Lemma apply_identity f x : is_identity_map f = true -> apply f x ≗ x.
+Proof.
+  unfold is_identity_map. rewrite andb_true_iff, forallb_forall. intros [U Z] i Li. rewrite (apply_unit f x U Li).
+  specialize (Z i (proj2 (in_indices i) Li)). apply Qeq_bool_eq in Z. rewrite Z. ring.
+Qed.
+
+Lemma apply_the_identity x : apply identity x ≗ x.
+Proof.
+  intros i Li. unfold apply, linear, identity. cbn [fst snd]. rewrite nth_map_seq by exact Li.
+  rewrite (sum_ext d _ (fun j => delta i j * x j)), sum_delta by (try exact Li; intros; rewrite entry_table by assumption; reflexivity).
+  ring.
+Qed.
+
+Lemma same_trans x y z : x ≗ y -> y ≗ z -> x ≗ z.
+Proof. intros A B i Li. now rewrite (A i Li), (B i Li). Qed.
+
+Lemma same_sym x y : x ≗ y -> y ≗ x.
+Proof. intros A i Li. now rewrite (A i Li). Qed.
+
+Lemma effect_ext w : forall p x y, x ≗ y -> effect p w x ≗ effect p w y.
+Proof. induction w as [|l w IH]; intros p x y E; cbn; [exact E|]. apply IH, apply_ext, E. Qed.
+
+Lemma effect_app u : forall p v x, effect p (u ++ v) x = effect (act p u) v (effect p u x).
+Proof. induction u as [|l u IH]; intros p v x; [reflexivity|]. cbn [app effect]. apply IH. Qed.
+
+Lemma composed_effect w : forall p f x, apply (composed p w f) x ≗ effect p w (apply f x).
+Proof.
+  induction w as [|l w IH]; intros p f x; cbn [composed effect]; [intros i _; reflexivity|].
+  apply same_trans with (1 := IH _ _ _). apply effect_ext, apply_after.
+Qed.
+
+Lemma along_effect p w x : apply (along p w) x ≗ effect p w x.
+Proof. apply same_trans with (1 := composed_effect w p identity x). apply effect_ext, apply_the_identity. Qed.
+
+Definition lin (w : word) (y : vector) : vector := linear (fst (along 0 w)) y.
+
+(** The effect of a word is affine. *)
+Lemma effect_add w x y : effect 0 w (fun i => x i + y i) ≗ (fun i => effect 0 w x i + lin w y i).
+Proof.
+  intros i Li. rewrite <- (along_effect 0 w _ Li), <- (along_effect 0 w x Li). unfold apply. rewrite linear_add. unfold lin. ring.
+Qed.
+
+Hypothesis checked : check_linear = true.
+
+Lemma table_ok : check_table relators gens forward backward n = true.
+Proof. unfold check_linear in checked. rewrite !andb_true_iff in checked. tauto. Qed.
+
+Lemma base_point : (0 < n)%nat.
+Proof. apply (table_positive relators gens forward backward n table_ok). Qed.
+
+Lemma letter_in l p : (p < n)%nat -> (act_letter p l < n)%nat.
+Proof. intros Hp. exact (act_letter_bound relators gens gens_complete forward backward table_ok l Hp). Qed.
+
+Lemma word_in w p : (p < n)%nat -> (act p w < n)%nat.
+Proof. intros Hp. exact (act_bound relators gens gens_complete forward backward table_ok w Hp). Qed.
+
+Lemma edges_invertible g p : (p < n)%nat ->
+  let '(f, f') := nth p (maps g) (identity, identity) in
+  is_identity_map (after f f') = true /\ is_identity_map (after f' f) = true.
+Proof.
+  intros Hp. unfold check_linear in checked. rewrite !andb_true_iff in checked.
+  destruct checked as [[[[[[[[[_ E] _] _] _] _] _] _] _] _]. rewrite forallb_forall in E. specialize (E g (gens_complete g)).
+  rewrite forallb_forall in E. specialize (E p (proj2 (in_points n p) Hp)).
+  destruct (nth p (maps g) (identity, identity)) as [f f']. now apply andb_true_iff in E.
+Qed.
+
+Lemma relators_act r p x : In r relators -> (p < n)%nat -> effect p r x ≗ x.
+Proof.
+  intros Hr Hp. unfold check_linear in checked. rewrite !andb_true_iff in checked.
+  destruct checked as [[[[[[[[_ R] _] _] _] _] _] _] _]. rewrite forallb_forall in R. specialize (R r Hr).
+  rewrite forallb_forall in R. specialize (R p (proj2 (in_points n p) Hp)).
+  apply same_trans with (1 := same_sym (along_effect p r x)). now apply apply_identity.
+Qed.
+
+Lemma effect_cancel p l x : (p < n)%nat -> effect p [l; flip l] x ≗ x.
+Proof.
+  intros Hp. pose proof (act_flip relators gens gens_complete forward backward table_ok l Hp) as A.
+  destruct l as [g [|]]; unfold flip in *; cbn [effect edge_map fst snd negb] in *.
+  - rewrite A. pose proof (edges_invertible g Hp) as E. destruct (nth p (maps g) (identity, identity)) as [f f'].
+    cbn [fst snd]. destruct E as [E _]. apply same_trans with (1 := same_sym (apply_after f f' x)). now apply apply_identity.
+  - pose proof (edges_invertible g (letter_in (g, false) Hp)) as E.
+    destruct (nth (act_letter p (g, false)) (maps g) (identity, identity)) as [f f'].
+    cbn [fst snd]. destruct E as [_ E]. apply same_trans with (1 := same_sym (apply_after f' f x)). now apply apply_identity.
+Qed.
+
+Lemma effect_eqv u v : u ≡ v -> forall p x, (p < n)%nat -> effect p u x ≗ effect p v x.
+Proof.
+  induction 1 as [w|u v H IH|u v w H1 IH1 H2 IH2|u u' v v' H1 IH1 H2 IH2|l|r Hr]; intros p x Hp.
+  - intros i _. reflexivity.
+  - apply same_sym, IH, Hp.
+  - apply same_trans with (1 := IH1 p x Hp), IH2, Hp.
+  - rewrite !effect_app, (act_eqv gens gens_complete forward backward table_ok H1 Hp).
+    apply same_trans with (y := effect (act p u') v (effect p u' x)); [apply effect_ext, IH1, Hp|].
+    apply IH2. now apply word_in.
+  - now apply effect_cancel.
+  - now apply relators_act.
+Qed.
+
+Lemma act_inverse w : act 0 w = 0%nat -> act 0 (inv w) = 0%nat.
+Proof.
+  intros E. rewrite <- E at 1. exact (act_inv relators gens gens_complete forward backward table_ok w base_point).
+Qed.
+
+Lemma effect_inverse w x : act 0 w = 0%nat -> effect 0 w (effect 0 (inv w) x) ≗ x.
+Proof.
+  intros A. pose proof (effect_eqv (app_inv_l relators w) x base_point) as E. rewrite effect_app, (act_inverse _ A) in E. exact E.
+Qed.
+
+(** Words that translate. *)
+Definition translates (w : word) (v : vector) : Prop := forall x, effect 0 w x ≗ (fun i => x i + v i).
+
+Lemma comm_translates x g v : act 0 x = 0%nat -> act 0 g = 0%nat -> translates x v ->
+  act 0 (comm x g) = 0%nat /\ translates (comm x g) (fun i => lin g v i - v i).
+Proof.
+  intros X G T. pose proof (act_inverse _ X) as X'. pose proof (act_inverse _ G) as G'. unfold comm. split.
+  - rewrite !(act_app forward backward), X', G', X. exact G.
+  - intros z. rewrite !effect_app, X', G', X.
+    set (z1 := effect 0 (inv x) z). set (z2 := effect 0 (inv g) z1).
+    assert (E1 : (fun i => z1 i + v i) ≗ z).
+    { apply same_trans with (1 := same_sym (T z1)). apply effect_inverse, X. }
+    assert (E2 : effect 0 g z2 ≗ z1) by (apply effect_inverse, G).
+    intros i Li. rewrite (effect_ext g 0 (T z2) Li). cbn beta. rewrite (effect_add g z2 v Li), (E2 i Li).
+    specialize (E1 i Li). cbn beta in E1. lra.
+Qed.
+
+Lemma translation_facts : act 0 translation = 0%nat /\ translates translation (fun i => nth i (snd (along 0 translation)) 0) /\
+  (forall i, (i < d)%nat -> 0 <= nth i (snd (along 0 translation)) 0) /\
+  (exists i, (i < d)%nat /\ 0 < nth i (snd (along 0 translation)) 0).
+Proof.
+  unfold check_linear in checked. rewrite !andb_true_iff in checked.
+  destruct checked as [[[[_ A] U] P] N]. apply Nat.eqb_eq in A. split; [exact A|]. split; [|split].
+  - intros x i Li. rewrite <- (along_effect 0 translation x Li). now apply apply_unit.
+  - intros i Li. rewrite forallb_forall in P. specialize (P i (proj2 (in_indices i) Li)). now apply Qle_bool_iff.
+  - apply existsb_exists in N. destruct N as [i [I N]]. exists i. split; [now apply in_indices|].
+    apply negb_true_iff in N. apply Qnot_le_lt. intros L. apply Qle_bool_iff in L. congruence.
+Qed.
+
+Lemma dilation_facts : act 0 dilation = 0%nat /\
+  (forall i j, (i < d)%nat -> (j < d)%nat -> delta i j <= entry (fst (along 0 dilation)) i j) /\
+  (forall j, (j < d)%nat -> exists i, (i < d)%nat /\ delta i j < entry (fst (along 0 dilation)) i j).
+Proof.
+  unfold check_linear in checked. rewrite !andb_true_iff in checked.
+  destruct checked as [[[[[[[_ A] L] S] _] _] _] _]. apply Nat.eqb_eq in A. split; [exact A|]. split.
+  - intros i j Li Lj. rewrite forallb_forall in L. specialize (L i (proj2 (in_indices i) Li)). rewrite forallb_forall in L.
+    specialize (L j (proj2 (in_indices j) Lj)). now apply Qle_bool_iff.
+  - intros j Lj. rewrite forallb_forall in S. specialize (S j (proj2 (in_indices j) Lj)). apply existsb_exists in S.
+    destruct S as [i [I N]]. exists i. split; [now apply in_indices|].
+    apply negb_true_iff in N. apply Qnot_le_lt. intros E. apply Qle_bool_iff in E. congruence.
+Qed.
+
+Definition nonneg (v : vector) : Prop := forall i, (i < d)%nat -> 0 <= v i.
+
+(** The dilation moves every vector without negative entries up. *)
+Lemma grows v : nonneg v -> forall i, (i < d)%nat -> v i <= lin dilation v i.
+Proof.
+  intros P i Li. destruct dilation_facts as [_ [L _]]. rewrite <- (sum_delta v Li). unfold lin, linear.
+  assert (E : 0 <= sum d (fun j => entry (fst (along 0 dilation)) i j * v j + (-1) * (delta i j * v j))).
+  { apply sum_nonneg. intros j Lj. pose proof (L i j Li Lj). pose proof (P j Lj). nra. }
+  rewrite sum_add, sum_scale in E. lra.
+Qed.
+
+Lemma grows_somewhere v j : nonneg v -> (j < d)%nat -> 0 < v j -> exists i, (i < d)%nat /\ v i < lin dilation v i.
+Proof.
+  intros P Lj V. destruct dilation_facts as [_ [L S]]. destruct (S j Lj) as [i [Li E]]. exists i. split; [exact Li|].
+  rewrite <- (sum_delta v Li). unfold lin, linear.
+  assert (F : (entry (fst (along 0 dilation)) i j - delta i j) * v j <=
+              sum d (fun j => entry (fst (along 0 dilation)) i j * v j + (-1) * (delta i j * v j))).
+  { apply Qle_trans with (y := entry (fst (along 0 dilation)) i j * v j + (-1) * (delta i j * v j)); [lra|].
+    apply (sum_at_least (fun j => entry (fst (along 0 dilation)) i j * v j + (-1) * (delta i j * v j)) Lj).
+    intros k Lk. pose proof (L i k Li Lk). pose proof (P k Lk). nra. }
+  rewrite sum_add, sum_scale in F. assert (0 < (entry (fst (along 0 dilation)) i j - delta i j) * v j) by nra. lra.
+Qed.
+
+Lemma lin_ext w x y : x ≗ y -> lin w x ≗ lin w y.
+Proof. apply linear_ext. Qed.
+
+Lemma lin_app u v y : act 0 u = 0%nat -> lin (u ++ v) y ≗ lin v (lin u y).
+Proof.
+  intros A i Li. set (z := fun _ : nat => 0).
+  pose proof (effect_add (u ++ v) z y Li) as E. rewrite !effect_app, A in E.
+  rewrite (effect_ext v 0 (effect_add u z y) Li) in E. rewrite (effect_add v (effect 0 u z) (lin u y) Li) in E. lra.
+Qed.
+
+Lemma power_grows k : forall v, nonneg v -> forall i, (i < d)%nat -> v i <= lin (power dilation k) v i.
+Proof.
+  destruct dilation_facts as [A _]. induction k as [|k IH]; intros v P i Li.
+  - cbn [power]. pose proof (effect_add [] (fun _ => 0) v Li) as E. cbn [effect] in E. lra.
+  - cbn [power]. rewrite (lin_app dilation (power dilation k) v A Li). pose proof (grows P Li).
+    assert (Q1 : nonneg (lin dilation v)) by (intros j Lj; pose proof (grows P Lj); pose proof (P j Lj); lra).
+    pose proof (IH _ Q1 i Li). lra.
+Qed.
+
+Lemma power_grows_more k v i : nonneg v -> (i < d)%nat -> lin dilation v i <= lin (power dilation (S k)) v i.
+Proof.
+  intros P Li. destruct dilation_facts as [A _]. cbn [power]. rewrite (lin_app dilation (power dilation k) v A Li).
+  apply power_grows; [|exact Li]. intros j Lj. pose proof (grows P Lj). pose proof (P j Lj). lra.
+Qed.
+
+Lemma power_translates w v k : act 0 w = 0%nat -> translates w v ->
+  translates (power w k) (fun i => inject_Z (Z.of_nat k) * v i).
+Proof.
+  intros A T. induction k as [|k IH]; intros x i Li; cbn [power effect]; [cbn; ring|].
+  rewrite effect_app, A. rewrite (IH _ i Li), (T x i Li). rewrite Nat2Z.inj_succ. unfold Z.succ. rewrite inject_Z_plus. cbn. ring.
+Qed.
+
+Theorem check_linear_sound : ~ virtually_nilpotent relators.
+Proof.
+  intros [H [N [c [S [I C]]]]].
+  destruct dilation_facts as [D0 _]. destruct translation_facts as [T0 [T1 [T2 [t [Lt T3]]]]].
+  destruct (some_power dilation S I) as [k Hk]. destruct (some_power translation S I) as [l Hl].
+  set (g := power dilation (Datatypes.S k)) in *.
+  assert (G0 : act 0 g = 0%nat) by (apply (power_act forward backward), D0).
+  assert (All : forall s, exists x v, lcs relators H s x /\ act 0 x = 0%nat /\ translates x v /\ nonneg v /\
+            exists i, (i < d)%nat /\ 0 < v i).
+  { induction s as [|s [x [v [Lx [X0 [X1 [X2 [i [Li X3]]]]]]]]].
+    - exists (power translation (Datatypes.S l)), (fun i => inject_Z (Z.of_nat (Datatypes.S l)) * nth i (snd (along 0 translation)) 0).
+      assert (P : 0 < inject_Z (Z.of_nat (Datatypes.S l))) by (unfold Qlt, inject_Z; cbn; lia).
+      repeat split; [exact Hl|apply (power_act forward backward), T0|now apply power_translates| |].
+      + intros i Li. pose proof (T2 i Li). nra.
+      + exists t. split; [exact Lt|]. nra.
+    - destruct (comm_translates g X0 G0 X1) as [A B].
+      exists (comm x g), (fun i => lin g v i - v i). repeat split; [|exact A|exact B| |].
+      + cbn. apply gen_in. exists x, g. repeat split; assumption.
+      + intros j Lj. pose proof (power_grows (Datatypes.S k) X2 Lj). unfold g. lra.
+      + destruct (grows_somewhere X2 Li X3) as [j [Lj X4]]. exists j. split; [exact Lj|].
+        pose proof (power_grows_more k X2 Lj). unfold g. lra. }
+  destruct (All c) as [x [v [Lx [X0 [X1 [_ [i [Li X3]]]]]]]]. apply C in Lx.
+  pose proof (effect_eqv Lx (fun _ => 0) base_point Li) as E. rewrite (X1 (fun _ => 0) i Li) in E. cbn [effect] in E. lra.
+Qed.
+
+End Linear.

@@ -9,6 +9,7 @@ from fractions import Fraction
 
 from lowindex.cosets import SchreierTree
 from lowindex.errors import InputError
+from lowindex.export.cone import LinearCertificate, linear_certificate
 from lowindex.export.reading import Factor, Reading
 from lowindex.words import Presentation, Word, cyclically_reduced, inverse, product
 
@@ -166,7 +167,7 @@ class AffineCertificate:
         _require(end == 0 and m == 1 and b != 0, "the translation")
 
 
-Certificate = NilpotentCertificate | TrivialWord | MovedWord | AffineCertificate
+Certificate = NilpotentCertificate | TrivialWord | MovedWord | AffineCertificate | LinearCertificate
 
 
 def certificate(reading: Reading) -> Certificate:
@@ -180,10 +181,13 @@ def certificate(reading: Reading) -> Certificate:
     if reading.claim == "different groups":
         raise InputError("that groups differ rests on two complete searches, which a script cannot hold; use --to latex")
     obstruction = reading.content["obstruction"]
-    if obstruction["kind"] != "affine" or obstruction["field"] != {"kind": "Q"}:
-        kind = obstruction["kind"] if obstruction["kind"] != "affine" else f"affine over {obstruction['field']['kind']}"
-        raise InputError(f"the soundness theorems cover affine obstructions over Q, not {kind}; use --to latex")
-    return _affine(reading)
+    field = obstruction["field"]["kind"] if obstruction["kind"] == "affine" else None
+    if field == "Q":
+        return _affine(reading)
+    if field == "Q[t]/(f)":
+        return linear_certificate(reading)
+    kind = obstruction["kind"] if field is None else f"affine over {field}"
+    raise InputError(f"the soundness theorems cover affine obstructions over Q and Q[t]/(f), not {kind}; use --to latex")
 
 
 def _affine(reading: Reading) -> AffineCertificate:

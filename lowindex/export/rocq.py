@@ -10,9 +10,11 @@ import re
 import textwrap
 from collections.abc import Iterable, Sequence
 from importlib.resources import files
+from typing import Any
 
 from lowindex.errors import InputError
 from lowindex.export.certificate import AffineCertificate, Lemma, MovedWord, NilpotentCertificate, TrivialWord, certificate
+from lowindex.export.cone import LinearCertificate, Map, inverted
 from lowindex.export.reading import Factor, Reading
 from lowindex.words import Word
 
@@ -38,6 +40,8 @@ def rocq(reading: Reading) -> dict[str, str]:
         script.nilpotent(found)
     elif isinstance(found, AffineCertificate):
         script.affine(found)
+    elif isinstance(found, LinearCertificate):
+        script.linear(found)
     elif isinstance(found, MovedWord):
         script.moved(found)
     else:
@@ -83,10 +87,14 @@ class _Script:
     def _table(self) -> None:
         """The statement's action on points."""
         table = self.reading.subgroup.table
-        for name, inverted in (("forward", False), ("backward", True)):
-            rows = [[table.lists[p][2 * k + inverted] for p in range(table.index)] for k in range(table.rank)]
-            cases = " ".join(f"| {g} => {_list(map(str, row))}" for g, row in zip(self.names, rows, strict=True))
-            self.parts.append(f"Definition {name} (g : generator) : list nat :=\n  match g with {cases} end.")
+        for name, back in (("forward", False), ("backward", True)):
+            rows = [[table.lists[p][2 * k + back] for p in range(table.index)] for k in range(table.rank)]
+            self._by_generator(f"{name} (g : generator) : list nat", [_list(map(str, row)) for row in rows])
+
+    def _by_generator(self, title: str, values: Sequence[str]) -> None:
+        """A function of the generators."""
+        cases = "\n  ".join(f"| {name} => {value}" for name, value in zip(self.names, values, strict=True))
+        self.parts.append(f"Definition {title} :=\n  match g with\n  {cases}\n  end.")
 
     def _goal(self, word: Word, claim: str) -> None:
         self.parts.append(f"Definition goal : word generator :=\n  {self.word(word)}.")
@@ -137,24 +145,32 @@ class _Script:
         )
         self.parts.append("Print Assumptions result.")
 
-    def affine(self, found: AffineCertificate) -> None:
-        """An affine action of a subgroup."""
+    def _obstruction(self, edges: tuple[str, list[str]], dilation: Word, translation: Word, theorem: str) -> None:
+        """What all obstructions share."""
         self.parts.append("(** Claim: no subgroup of finite index is nilpotent. *)")
         self.parts.append("Definition claim : Prop := ~ virtually_nilpotent relators.")
-        self.parts.append("(** The certificate: a table, an affine map of the rationals on every edge, a dilation, a translation *)")
+        self.parts.append("(** The certificate: a table, an affine map on every edge, a dilation, a translation *)")
         self._table()
-        cases = " ".join(
-            f"| {name} => {_list(f'(({m.numerator}) # {m.denominator}, ({b.numerator}) # {b.denominator})' for m, b in row)}"
-            for name, row in zip(self.names, found.labels, strict=True)
-        )
-        self.parts.append(f"Definition labels (g : generator) : list (Q * Q) :=\n  match g with {cases} end.")
-        self.parts.append(f"Definition dilation : word generator :=\n  {self.word(found.dilation)}.")
-        self.parts.append(f"Definition translation : word generator :=\n  {self.word(found.translation)}.")
+        self._by_generator(*edges)
+        self.parts.append(f"Definition dilation : word generator :=\n  {self.word(dilation)}.")
+        self.parts.append(f"Definition translation : word generator :=\n  {self.word(translation)}.")
         self.parts.append(
-            "Theorem result : claim.\nProof.\n  refine (@check_affine_sound generator gens gens_complete relators forward backward "
-            f"{self.reading.index} labels dilation translation _).\n  vm_cast_no_check (eq_refl true).\nQed."
+            f"Theorem result : claim.\nProof.\n  refine (@{theorem} dilation translation _).\n  vm_cast_no_check (eq_refl true).\nQed."
         )
         self.parts.append("Print Assumptions result.")
+
+    def affine(self, found: AffineCertificate) -> None:
+        """An affine action of a subgroup on the rationals."""
+        rows = [_list(f"({_rational(m)}, {_rational(b)})" for m, b in row) for row in found.labels]
+        theorem = f"check_affine_sound generator gens gens_complete relators forward backward {self.reading.index} labels"
+        self._obstruction(("labels (g : generator) : list (Q * Q)", rows), found.dilation, found.translation, theorem)
+
+    def linear(self, found: LinearCertificate) -> None:
+        """An affine action of a subgroup on rational vectors."""
+        trivial = f"(identity {found.dimension}, identity {found.dimension})"
+        rows = [_list(trivial if f is None else f"({_map(f)}, {_map(inverted(f))})" for f in row) for row in found.maps]
+        theorem = f"check_linear_sound generator gens gens_complete relators forward backward {self.reading.index} {found.dimension} maps"
+        self._obstruction(("maps (g : generator) : list (map_of * map_of)", rows), found.dilation, found.translation, theorem)
 
     def trivial(self, found: TrivialWord) -> None:
         """A word that is trivial."""
@@ -241,6 +257,21 @@ def _packed(lemmas: Sequence[Lemma]) -> str:
 
 def _numbers(word: Word) -> list[int]:
     return [len(word), *(2 * (abs(x) - 1) + (x < 0) for x in word)]
+
+
+def _rational(q: Any) -> str:
+    return f"({int(q.numerator)}) # {int(q.denominator)}"
+
+
+def _map(f: Map) -> str:
+    """A map by the rows of its matrix and its column, with fractions of flint's."""
+    size = f[0].nrows()
+    rows = _list(_list(_entry(f[0][i, j]) for j in range(size)) for i in range(size))
+    return f"({rows}, {_list(_entry(f[1][i, 0]) for i in range(size))})"
+
+
+def _entry(q: Any) -> str:
+    return f"({int(q.p)}) # {int(q.q)}"
 
 
 def _origin(origin: tuple[int, int] | None) -> str:
