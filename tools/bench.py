@@ -51,6 +51,7 @@ AGAINST_SYMPY += [("genus 2", GENUS_TWO, 3), ("figure-eight", FIGURE_EIGHT, 6)]
 ENCODED = [("free of rank 2", FREE, 8), ("modular", MODULAR, 24), ("(2,3,7)", TRIANGLE, 70), ("genus 2", GENUS_TWO, 5)]
 ENCODED += [("Heisenberg", HEISENBERG, 14), ("Z^3", Z3, 24), ("figure-eight", FIGURE_EIGHT, 12), ("cyclic of 6 generators", CYCLIC_SIX, 50)]
 E7 = coxeter.coxeter(7, {**coxeter.path(3, 3, 3, 3, 3), (2, 6): 3, (5, 6): 2})
+CUBES = "a b c ab ab^-1 ac ac^-1 bc bc^-1 abc abc^-1 ab^-1c a^-1bc".split()
 ENUMERATED: list[tuple[str, str, str | None]] = [
     ("E6", coxeter.coxeter(6, {**coxeter.path(3, 3, 3, 3), (2, 5): 3, (4, 5): 2}), None),
     ("E7 over <a>", E7, "a"),
@@ -58,6 +59,7 @@ ENUMERATED: list[tuple[str, str, str | None]] = [
     ("(2,3,7;8)", cyclic.two_three_seven(8), None),
     ("(2,3,9;5)", "⟨a, b | a^2, b^3, (ab)^9, [a,b]^5⟩", None),
     ("B(2,4)", "⟨a, b | a^4, b^4, (ab)^4, (a^-1b)^4, (a^2b)^4, (ab^2)^4, (a^2b^2)^4, (a^-1bab)^4, (ab^-1ab)^4⟩", None),
+    ("B(3,3)", f"⟨a, b, c | {', '.join(f'({word})^3' for word in CUBES)}⟩", None),
     ("PSL(2,61)", "⟨s, t | s^61, t^2, (s t)^3, (s^2 t s^31 t)^3⟩", None),
     ("F(2,7)", cyclic.fibonacci(2, 7), None),
     ("S9", coxeter.coxeter(8, coxeter.path(3, 3, 3, 3, 3, 3, 3)), None),

@@ -55,7 +55,9 @@ def test_subgroups_given_by_words() -> None:
     assert enumerate_cosets(e7, parabolic, budget=Budget()).table.index == 56  # type: ignore[union-attr]
 
 
+CUBES = "a b c ab ab^-1 ac ac^-1 bc bc^-1 abc abc^-1 ab^-1c a^-1bc".split()
 LARGE = {
+    "B(3,3)": (f"⟨a, b, c | {', '.join(f'({word})^3' for word in CUBES)}⟩", 2187),  # OEIS A079682 (L); 13 cubes suffice (C)
     # J. E. Humphreys, Reflection Groups and Coxeter Groups (1990)
     "E6": (coxeter.coxeter(6, {**coxeter.path(3, 3, 3, 3), (2, 5): 3, (4, 5): 2}), 51_840),
     "E7": (coxeter.coxeter(7, {**coxeter.path(3, 3, 3, 3, 3), (2, 6): 3, (5, 6): 2}), 2_903_040),
