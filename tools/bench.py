@@ -51,7 +51,7 @@ AGAINST_SYMPY += [("genus 2", GENUS_TWO, 3), ("figure-eight", FIGURE_EIGHT, 6)]
 ENCODED = [("free of rank 2", FREE, 8), ("modular", MODULAR, 24), ("(2,3,7)", TRIANGLE, 70), ("genus 2", GENUS_TWO, 5)]
 ENCODED += [("Heisenberg", HEISENBERG, 14), ("Z^3", Z3, 24), ("figure-eight", FIGURE_EIGHT, 12), ("cyclic of 6 generators", CYCLIC_SIX, 50)]
 E7 = coxeter.coxeter(7, {**coxeter.path(3, 3, 3, 3, 3), (2, 6): 3, (5, 6): 2})
-CUBES = "a b c ab ab^-1 ac ac^-1 bc bc^-1 abc abc^-1 ab^-1c a^-1bc".split()
+CUBES = ["a", "b", "c", "ab", "ab^-1", "ac", "ac^-1", "bc", "bc^-1", "abc", "abc^-1", "ab^-1c", "a^-1bc"]
 ENUMERATED: list[tuple[str, str, str | None]] = [
     ("E6", coxeter.coxeter(6, {**coxeter.path(3, 3, 3, 3), (2, 5): 3, (4, 5): 2}), None),
     ("E7 over <a>", E7, "a"),

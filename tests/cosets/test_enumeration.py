@@ -55,7 +55,7 @@ def test_subgroups_given_by_words() -> None:
     assert enumerate_cosets(e7, parabolic, budget=Budget()).table.index == 56  # type: ignore[union-attr]
 
 
-CUBES = "a b c ab ab^-1 ac ac^-1 bc bc^-1 abc abc^-1 ab^-1c a^-1bc".split()
+CUBES = ["a", "b", "c", "ab", "ab^-1", "ac", "ac^-1", "bc", "bc^-1", "abc", "abc^-1", "ab^-1c", "a^-1bc"]
 LARGE = {
     "B(3,3)": (f"⟨a, b, c | {', '.join(f'({word})^3' for word in CUBES)}⟩", 2187),  # OEIS A079682 (L); 13 cubes suffice (C)
     # J. E. Humphreys, Reflection Groups and Coxeter Groups (1990)
