@@ -32,14 +32,13 @@ def remark(text: str) -> None:
     sys.stderr.flush()
 
 
-def announce_compilation() -> None:
-    """Say so when kernels are going to be compiled, as on first use (looked for as files, nothing is imported)."""
+def announce_compilation(kernel: str = "search_kernel") -> None:
+    """Say so when the kernel a command needs first is going to be compiled (looked for as files, nothing is imported)."""
     package = Path(lowindex.__file__).parent
     cache = os.environ.get("NUMBA_CACHE_DIR")
     if cache is None and not os.access(package, os.W_OK):
         return  # the compiler keeps them somewhere in the home folder then
-    compiled = {path.name.partition("-")[0].partition(".")[0] for path in Path(cache or package).rglob("*_kernel.*.nbc")}
-    if {path.stem for path in package.rglob("*_kernel.py")} - compiled:
+    if next(Path(cache or package).rglob(f"{kernel}.*.nbc"), None) is None:
         remark("compiling kernels on first use (a few seconds)")
 
 

@@ -54,7 +54,7 @@ def add(commands: argparse._SubParsersAction[argparse.ArgumentParser]) -> None:
 
 def run(arguments: argparse.Namespace) -> int:
     """List or count for every group; the exit code."""
-    announce_compilation()
+    announce_compilation("search_kernel" if arguments.onto is None else "onto_kernel")
     require_positive_seconds(arguments)
     if arguments.degree is not None and not 1 <= arguments.degree <= LARGEST_DEGREE:
         raise InputError(f"--degree must be between 1 and {LARGEST_DEGREE}, not {arguments.degree}")

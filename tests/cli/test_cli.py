@@ -166,3 +166,12 @@ def test_small_hunt_is_quick() -> None:
         subprocess.run([sys.executable, "-m", "lowindex.cli.main", "hunt", P4], capture_output=True, check=True, cwd=ROOT)
         times.append(time.monotonic() - began)
     assert sorted(times)[1] < 2
+
+
+def test_compilation_is_announced_once(tmp_path: Path) -> None:
+    """On first use, and only then."""
+    command = [sys.executable, "-m", "lowindex.cli.main", "subgroups", "⟨a, b | a^2, b^3⟩", "--index", "5", "--count"]
+    environment = {**os.environ, "NUMBA_CACHE_DIR": str(tmp_path)}
+    said = [subprocess.run(command, capture_output=True, text=True, check=True, env=environment).stderr for _ in range(2)]
+    assert "compiling kernels" in said[0]
+    assert said[1] == ""
